@@ -1,0 +1,1 @@
+"""Chemistry on plain values: no deck, no screen, no file."""

@@ -1,0 +1,196 @@
+"""Lazy, cached, read-only answers about one deck: all that a rule may ask.
+
+A fact that cannot be worked out raises `NotDerivable` with the reason; the engine turns that into "not judged".
+Facts only expose what `chemistry/` works out on plain values.
+"""
+
+from collections.abc import Mapping
+from functools import cached_property
+from typing import TYPE_CHECKING
+
+import numpy as np
+from numpy.typing import NDArray
+
+from checker.chemistry import ledger as books
+from checker.deck import Aside
+from checker.elements import symbol_of
+from checker.errors import NotDerivable
+from checker.findings import Expected, Ledger
+from checker.model import Job
+
+if TYPE_CHECKING:
+    from checker.chemistry.configurations import GroundLevel
+
+UNSTATED_MULTIPLICITY = "the deck states no multiplicity"
+
+
+class Facts:
+    """What is known of a job. Atom indices count from 0; "real" atoms are those that are no ghosts."""
+
+    def __init__(self, job: Job, asides: tuple[Aside, ...] = ()) -> None:
+        self.job = job
+        self.asides = asides
+
+    @cached_property
+    def numbers(self) -> NDArray[np.int64]:
+        """(n,) atomic numbers of all atoms, ghosts included."""
+        return self.job.species.atoms.numbers
+
+    @cached_property
+    def coordinates(self) -> NDArray[np.float64]:
+        """(n, 3) angstrom, ghosts included."""
+        return self.job.species.atoms.coordinates
+
+    @cached_property
+    def is_ghost(self) -> NDArray[np.bool_]:
+        """(n,) True where the atom carries basis functions only."""
+        mask = np.zeros(len(self.numbers), dtype=bool)
+        mask[[number - 1 for number in self.job.species.ghost_atoms]] = True
+        return mask
+
+    @cached_property
+    def real_indices(self) -> NDArray[np.int64]:
+        """(m,) indices of the real atoms in the deck's order."""
+        return np.flatnonzero(~self.is_ghost)
+
+    @cached_property
+    def real_numbers(self) -> NDArray[np.int64]:
+        """(m,) atomic numbers of the real atoms."""
+        return self.numbers[self.real_indices] if self.job.species.ghost_atoms else self.numbers
+
+    @cached_property
+    def real_coordinates(self) -> NDArray[np.float64]:
+        """(m, 3) angstrom, the real atoms."""
+        return self.coordinates[self.real_indices] if self.job.species.ghost_atoms else self.coordinates
+
+    @cached_property
+    def elements(self) -> tuple[int, ...]:
+        """Atomic numbers of the real atoms that occur, ascending."""
+        return tuple(np.unique(self.real_numbers).tolist())
+
+    def label(self, real_index: int) -> str:
+        """Return how people name a real atom: symbol and its 1-based number in the deck, such as "O 3"."""
+        index = int(self.real_indices[real_index])
+        return f"{symbol_of(int(self.numbers[index]))} {index + 1}"
+
+    def atom_key(self, real_index: int) -> str:
+        """Return the deck key of a real atom, such as ``species.atoms[2]``."""
+        return f"species.atoms[{int(self.real_indices[real_index])}]"
+
+    @property
+    def charge(self) -> int:
+        """The stated charge of the species."""
+        return self.job.species.charge
+
+    @property
+    def stated_multiplicity(self) -> int:
+        """The stated 2S+1, whatever its value; not derivable where the deck leaves it out."""
+        if self.job.species.multiplicity is None:
+            raise NotDerivable(UNSTATED_MULTIPLICITY)
+        return self.job.species.multiplicity
+
+    @property
+    def intent(self) -> str:
+        """What the job is for; "ground" where the deck does not say."""
+        return self.job.treatment.intent or "ground"
+
+    @property
+    def environment(self) -> str:
+        """Where the species is; "gas" where the deck does not say."""
+        return self.job.species.environment or "gas"
+
+    @cached_property
+    def replaced_per_atom(self) -> Mapping[int, int]:
+        """Electrons replaced per atom by atomic number; not derivable where a named potential is unknown."""
+        potential = self.job.core_potential
+        if potential is None:
+            return {}
+        return {z: self._replaced(z) for z in self.elements}
+
+    def _replaced(self, z: int) -> int:
+        from checker.chemistry.core_potentials import electrons_replaced
+
+        potential = self.job.core_potential
+        assert potential is not None
+        symbol = symbol_of(z)
+        if symbol in potential.replaced:
+            return potential.replaced[symbol]
+        if potential.name is None:
+            return 0
+        name = self._potential_set(symbol, potential.name)
+        known = electrons_replaced(name, z)
+        if known is not None:
+            return known
+        if potential.replaced:  # the author listed what is replaced; the rest is all-electron
+            return 0
+        raise NotDerivable(
+            f"how many electrons the core potential {name!r} replaces for {symbol} is not in the table; "
+            "state core_potential.replaced"
+        )
+
+    def _potential_set(self, symbol: str, name: str) -> str:
+        if name != "from-basis":
+            return name
+        basis = self.job.basis
+        if basis is None:
+            raise NotDerivable("the core potential is to come from the basis, and the deck names no basis")
+        return basis.for_element.get(symbol, basis.name)
+
+    @cached_property
+    def ledger(self) -> Ledger:
+        """The electron books; what depends on an unknown core potential is None."""
+        try:
+            replaced: Mapping[int, int] | None = self.replaced_per_atom
+        except NotDerivable:
+            replaced = None
+        species = self.job.species
+        return books.ledger(self.numbers, self.is_ghost, species.charge, species.multiplicity, replaced)
+
+    @cached_property
+    def n_electrons(self) -> int:
+        """Electrons that the job treats; not derivable where a named core potential is unknown."""
+        n_electrons = self.ledger.n_electrons
+        if n_electrons is None:
+            _ = self.replaced_per_atom  # raises, with the reason
+            raise AssertionError("the books are complete where the potentials are known")
+        return n_electrons
+
+    @cached_property
+    def free_atom(self) -> int | None:
+        """The atomic number, where the species is a single real atom; else None."""
+        return int(self.real_numbers[0]) if len(self.real_numbers) == 1 else None
+
+    @cached_property
+    def ground_level(self) -> "GroundLevel":
+        """The ground level of a free atom or ion; not derivable for molecules or where none is known."""
+        from checker.chemistry.configurations import ground_level
+
+        if self.free_atom is None:
+            raise NotDerivable("the species is no free atom")
+        return ground_level(self.free_atom, self.charge)
+
+    @cached_property
+    def expected(self) -> Expected:
+        """The state we would expect; empty where we do not know."""
+        try:
+            multiplicity = self.ground_level.multiplicity
+        except NotDerivable:
+            return Expected()
+        if multiplicity is None or self.f_electrons_in_core:
+            return Expected()
+        return Expected(multiplicity=multiplicity, multiplicity_confidence=self.ground_level_confidence)
+
+    @property
+    def ground_level_confidence(self) -> float:
+        """How sure the ground level of a free atom is: measured, predicted or derived."""
+        return {"measured": 0.99, "predicted": 0.8}.get(self.ground_level.origin, 0.9)
+
+    @cached_property
+    def f_electrons_in_core(self) -> int:
+        """Open-shell f electrons per atom that a core potential replaces, at most over the elements present."""
+        from checker.chemistry.core_potentials import f_electrons_in_core
+
+        if self.job.core_potential is None:
+            return 0
+        replaced = self.replaced_per_atom
+        return max((f_electrons_in_core(z, replaced[z]) for z in self.elements), default=0)
