@@ -15,9 +15,7 @@ from checker.findings import DeckReport
 
 FOLDER = Path(__file__).parent.parent / "sample_decks"
 DECLARATION = re.compile(r"must give: (?:(nothing)|([a-z-]+) (halt|doubt|note|accepted) at ([\w.\[\]]+))")
-DECKS = sorted(
-    path for path in FOLDER.iterdir() if path.name.endswith((".deck.toml", ".deck.json", ".xyz"))
-)
+DECKS = sorted(path for path in FOLDER.iterdir() if path.name.endswith((".deck.toml", ".deck.json", ".xyz")))
 
 
 def declared(text: str) -> list[tuple[str, str, str]]:
