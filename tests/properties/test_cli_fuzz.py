@@ -41,11 +41,12 @@ PIECES = st.one_of(
     st.sampled_from(
         [
             b"\n", b"\r", b"\t", b"\x00", b"\xef\xbb\xbf", b"\xff\xfe", b"[", b"]" * 40, b"[" * 3000, b"{", b"}",
-            b"=",            b'"', b"'", b"#", b"nan", b"inf", b"-", b"1e999", b"1.0D+00", b"9" * 5000, b"-1", b"0", b"999",
-            b"true",            b"D", b"Xx", b"Og", b"charge=1", b"multiplicity=3", b'Lattice="5 0 0 0 5 0 0 0 5"', b"[species]",
-            b"[[accepted]]", b"ghost_atoms = [1]\n", b"length_unit = 'bohr'\n", b'geometry = "../x.xyz"\n',
-            b'environment = "gas"\n', b"[core_potential]\nreplaced = { H = 2 }\n", "é".encode(), b"\x1b[31m",
-            b"[occupations]\nalpha = { A1 = 3 }\n", b"[[fragments]]\natoms = [1]\ncharge = 9\n",
+            b"=", b'"', b"'", b"#", b"nan", b"inf", b"-", b"1e999", b"1.0D+00", b"9" * 5000, b"-1", b"0", b"999",
+            b"true", b"D", b"Xx", b"Og", b"charge=1", b"multiplicity=3", b'Lattice="5 0 0 0 5 0 0 0 5"',
+            b"[species]", b"[[accepted]]", b"ghost_atoms = [1]\n", b"length_unit = 'bohr'\n",
+            b'geometry = "../x.xyz"\n', b'environment = "gas"\n', b"[core_potential]\nreplaced = { H = 2 }\n",
+            "\u00e9".encode(), b"\x1b[31m", b"[occupations]\nalpha = { A1 = 3 }\n",
+            b"[[fragments]]\natoms = [1]\ncharge = 9\n",
         ]
     ),
 )  # fmt: skip
