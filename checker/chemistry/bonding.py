@@ -27,7 +27,7 @@ OVERLAP_ANGSTROM = 0.45
 """Two nuclei nearer than this are no bond but a slip: the shortest bond there is, H2, is 0.74 long."""
 
 STRETCH_ANGSTROM = 0.15
-"""An atom with more neighbours than its shell holds loses contacts that are longer than the radii by more than this."""
+"""An atom with more neighbours than its shell holds loses contacts longer than the radii by more than this."""
 
 METAL_CONTACT_LIMIT_ANGSTROM = 4.5
 """Two metal atoms farther apart than this are no contact, whatever their radii."""
@@ -100,7 +100,7 @@ def perceive_bonds(numbers: Ints, coordinates: Floats) -> Bonds:
 
 
 def _candidate_pairs(numbers: Ints, coordinates: Floats, covalent: NDArray[np.bool_]) -> tuple[Ints, Floats]:
-    """Pairs worth looking at; two metals are searched apart, so that their size does not widen the whole search."""
+    """Pairs worth looking at; metal pairs are searched apart, lest their size widen the whole search."""
     radii = cordero_radii()[numbers]
     if not len(numbers):
         return np.empty((0, 2), dtype=np.int64), np.empty(0)
@@ -138,8 +138,10 @@ class _Links:
 
     def prune(self) -> None:
         """Drop what is too many: second bonds of hydrogens, bonds across hydrogen bridges, stretched contacts."""
-        doomed = {bond for atom in self._crowded_hydrogens() for bond in self._surplus_of_hydrogen(atom)}
-        doomed |= self._across_bridges(doomed)
+        crowded = self._rows_of_crowded_hydrogens()
+        kept_by = {atom: self._best_of_hydrogen(atom, rows) for atom, rows in crowded.items()}
+        doomed = {row for atom, rows in crowded.items() for row in rows if row not in kept_by[atom]}
+        doomed |= self._across_bridges(kept_by)
         doomed |= self._stretched(doomed)
         if doomed:
             kept = np.ones(len(self.pairs), dtype=bool)
@@ -160,37 +162,39 @@ class _Links:
     def _degrees(self) -> Ints:
         return np.bincount(self.pairs.reshape(-1), minlength=len(self.numbers))
 
-    def _crowded_hydrogens(self) -> list[int]:
-        crowded = np.flatnonzero((self._degrees() > 1) & (self.numbers == 1))
-        return [int(atom) for atom in crowded]
+    def _rows_of_crowded_hydrogens(self) -> dict[int, list[int]]:
+        """Rows of `pairs`, tightest bond first, for each hydrogen that has several."""
+        crowded = (self._degrees() > 1) & (self.numbers == 1)
+        rows_of: dict[int, list[int]] = {}
+        if crowded.any():
+            for row in np.flatnonzero(crowded[self.pairs].any(axis=1)).tolist():
+                for atom in self.pairs[row].tolist():
+                    if crowded[atom]:
+                        rows_of.setdefault(atom, []).append(row)
+        return rows_of
 
-    def _bonds_of(self, atom: int) -> list[int]:
-        """Rows of `pairs` that hold the atom, tightest bond first."""
-        return [int(row) for row in np.flatnonzero((self.pairs == atom).any(axis=1))]
-
-    def _surplus_of_hydrogen(self, atom: int) -> list[int]:
-        """All bonds of a hydrogen but the best one; a bridge between electron-deficient atoms keeps two."""
-        rows = self._bonds_of(atom)
-        bridge = [row for row in rows if self._other(row, atom) in _BRIDGED_BY_HYDROGEN]
+    def _best_of_hydrogen(self, atom: int, rows: list[int]) -> list[int]:
+        """Return the rows a hydrogen keeps: its tightest to a heavy atom, or two across a bridge."""
+        ends = {row: int(self.numbers[self._other_end(row, atom)]) for row in rows}
+        bridge = [row for row in rows if ends[row] in _BRIDGED_BY_HYDROGEN]
         if len(bridge) >= 2:
-            return [row for row in rows if row not in bridge[:2]]
-        heavy = [row for row in rows if self._other(row, atom) != 1]
-        best = (heavy or rows)[0]
-        return [row for row in rows if row != best]
+            return bridge[:2]
+        return ([row for row in rows if ends[row] != 1] or rows)[:1]
 
-    def _other(self, row: int, atom: int) -> int:
-        i, j = self.pairs[row]
-        return int(self.numbers[j if i == atom else i])
+    def _other_end(self, row: int, atom: int) -> int:
+        i, j = self.pairs[row].tolist()
+        return int(j if i == atom else i)
 
-    def _across_bridges(self, doomed: set[int]) -> set[int]:
+    def _across_bridges(self, kept_by: dict[int, list[int]]) -> set[int]:
         """Bonds between two atoms that share bridging hydrogens, as in diborane."""
-        bridged: set[tuple[int, int]] = set()
-        for atom in self._crowded_hydrogens():
-            rows = [row for row in self._bonds_of(atom) if row not in doomed]
-            ends = sorted(int(end) for row in rows for end in self.pairs[row] if end != atom)
-            if len(ends) == 2:
-                bridged.add((ends[0], ends[1]))
-        return {row for row, (i, j) in enumerate(self.pairs.tolist()) if (i, j) in bridged} if bridged else set()
+        bridged = {
+            tuple(sorted(self._other_end(row, atom) for row in rows))
+            for atom, rows in kept_by.items()
+            if len(rows) == 2
+        }
+        return (
+            {row for row, pair in enumerate(self.pairs.tolist()) if tuple(pair) in bridged} if bridged else set()
+        )
 
     def _stretched(self, doomed: set[int]) -> set[int]:
         """Stretched contacts of atoms that have more neighbours than their shell holds, longest first."""
