@@ -59,6 +59,7 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
         ledger=facts.ledger,
         expected=facts.expected,
         rule_failed=any(finding.rule == "rule-failed" for finding in findings),
+        atoms_file=deck.places.find("species.atoms[0]").file,
     )
 
 

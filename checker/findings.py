@@ -156,7 +156,10 @@ class Expected:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class DeckReport:
-    """All that is said of one deck; findings stand worst first, then by line and rule, accepted ones last."""
+    """All that is said of one deck; findings stand worst first, then by line and rule, accepted ones last.
+
+    `atoms_file` is the file that holds the rows of the atoms: the deck itself, or its geometry file.
+    """
 
     deck: str
     title: str | None
@@ -166,6 +169,7 @@ class DeckReport:
     ledger: Ledger | None = None
     expected: Expected | None = None
     rule_failed: bool = False
+    atoms_file: str | None = None
 
     @property
     def worst(self) -> Grade | None:

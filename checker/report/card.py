@@ -1,0 +1,195 @@
+"""The terminal report of one deck: verdict, findings, electron books, what was not judged."""
+
+from collections.abc import Iterator
+
+from checker.findings import DeckReport, ElementBook, Expected, Grade, Json, Ledger, PlacedFinding, Verdict
+from checker.report.deck_lines import deck_lines
+from checker.report.layout import Page, grade_style, verdict_style
+from checker.report.plain import counted, evidence, grade_counts, plain, signed
+
+MOST_FINDINGS = 40
+LONGEST_EVIDENCE = 400
+INDENT = "    "
+
+
+def card(report: DeckReport, page: Page) -> Iterator[str]:
+    """Yield the whole report of one deck."""
+    yield from heading(report, page)
+    yield from findings(report, page, MOST_FINDINGS)
+    if report.findings and report.ledger is not None:
+        yield "\n"
+    if report.ledger is not None:
+        yield from _books(report.ledger, page, short=report.verdict is Verdict.CLEAR)
+    if report.expected is not None:
+        yield from _expected(report.expected, page)
+    yield from _not_judged(report, page)
+    if any(finding.numbered for finding in report.findings if finding.accepted is None):
+        yield "\n"
+        yield from page.entry("next", "--apply N writes repair N into the deck and judges it again")
+
+
+def heading(report: DeckReport, page: Page) -> Iterator[str]:
+    """Yield the verdict, the deck's name and title, and how many findings of which grade there are."""
+    label = f"{page.mark(report.verdict)} {report.verdict.upper()}"
+    yield page.line((label, verdict_style(report.verdict)), (plain(report.deck), "name"))
+    if report.title:
+        yield from page.entry("", plain(report.title))
+    count = _count(report)
+    if count:
+        yield from page.entry("", count)
+
+
+def findings(report: DeckReport, page: Page, most: int, lowest: Grade = Grade.NOTE) -> Iterator[str]:
+    """Yield the findings in the report's order, as many as `most`, none below the grade `lowest`.
+
+    Where notes are left out, so are the findings that the author accepted.
+    """
+    shown = [f for f in report.findings if f.grade >= lowest and (lowest is Grade.NOTE or f.accepted is None)]
+    for finding in shown[:most]:
+        yield "\n"
+        if finding.rule == "deck-unreadable":
+            yield from _complaints(finding, page)
+        elif finding.accepted is not None:
+            yield from _accepted(finding, page)
+        else:
+            yield from _finding(finding, report, page)
+    n_more = len(shown) - most
+    if n_more > 0:
+        yield "\n"
+        yield from page.entry("", f"and {counted(n_more, 'more finding')}; --format json has them all")
+
+
+def _count(report: DeckReport) -> str:
+    if report.verdict is Verdict.UNREADABLE:
+        return "could not be read, so nothing was judged"
+    counted_ones = grade_counts(finding.grade for finding in report.findings if finding.accepted is None)
+    n_accepted = sum(finding.accepted is not None for finding in report.findings)
+    return ", ".join(part for part in (counted_ones, f"{n_accepted} accepted" if n_accepted else "") if part)
+
+
+def _finding(placed: PlacedFinding, report: DeckReport, page: Page) -> Iterator[str]:
+    said = placed.finding
+    style = grade_style(placed.grade)
+    label = f"{page.glyph(placed.grade.word)} {placed.grade.word}"
+    yield from page.entry(label, plain(said.message), style if placed.grade is not Grade.HALT else "name", style)
+    yield from page.entry("place", _place(placed))
+    yield from page.entry("ground", plain(said.why))
+    if said.evidence:
+        yield from page.entry("evidence", _shortened(evidence(said.evidence.items())))
+    sure = f", confidence {said.confidence:.2g}" if said.confidence < 1 else ""
+    yield from page.entry("rule", f"{placed.rule}{sure}, finding {placed.fingerprint}")
+    for n, repair in placed.numbered:
+        share = f" (likelihood {_percent(repair.weight)})" if len(placed.numbered) > 1 else ""
+        yield from page.entry(f"repair {n}", plain(repair.say) + share)
+        for line in deck_lines(repair, report):
+            yield page.line(("", ""), (INDENT + line, "paste"))
+
+
+def _accepted(placed: PlacedFinding, page: Page) -> Iterator[str]:
+    assert placed.accepted is not None
+    until = f" (until {placed.accepted.until})" if placed.accepted.until else ""
+    yield from page.entry(f"{page.glyph('accepted')} accepted", plain(placed.finding.message), label_style="")
+    yield from page.entry("place", _place(placed))
+    yield from page.entry("reason", plain(placed.accepted.reason) + until)
+    yield from page.entry("rule", f"{placed.rule}, a {placed.grade.word}, finding {placed.fingerprint}")
+
+
+def _complaints(placed: PlacedFinding, page: Page) -> Iterator[str]:
+    """Yield each complaint on a line of its own, its place first, so that editors can jump to it."""
+    complaints = placed.finding.evidence["complaints"]
+    assert isinstance(complaints, list)
+    for complaint in complaints:
+        assert isinstance(complaint, dict)
+        yield page.free((f"{_spot(complaint['file'], complaint['line'], complaint['column'])}: ", "name"))
+        yield from page.entry("", plain(str(complaint["message"])))
+
+
+def _place(placed: PlacedFinding) -> str:
+    spot = _spot(placed.where.file, placed.where.line, placed.where.column)
+    return f"{spot} {plain(placed.key)}".rstrip()
+
+
+def _spot(file: Json, line: Json, column: Json) -> str:
+    return ":".join(plain(str(part)) for part in (file, line, column) if part is not None)
+
+
+def _shortened(text: str) -> str:
+    return text if len(text) <= LONGEST_EVIDENCE else f"{text[:LONGEST_EVIDENCE]} ... (--format json has it all)"
+
+
+def _percent(weight: float) -> str:
+    return f"{100 * weight:.0f} %" if weight >= 0.01 else "below 1 %"
+
+
+def _books(ledger: Ledger, page: Page, *, short: bool) -> Iterator[str]:
+    label = "books"
+    if not short or ledger.ghost_atoms or ledger.core_electrons_replaced != 0:
+        for line in _book_table(ledger):
+            yield page.line((label, "label"), (line, ""))
+            label = ""
+        yield from page.entry(label, _balance(ledger))
+    else:
+        yield from page.entry(label, f"{_formula(ledger.by_element)}: {_balance(ledger)}")
+
+
+def _book_table(ledger: Ledger) -> list[str]:
+    """Return one row an element and one for all, columns of numbers flush right."""
+    rows = [["element", "atoms", "ghosts", "nuclear charge", "in core potentials"]]
+    for book in ledger.by_element:
+        replaced = book.core_electrons_replaced
+        rows.append([book.symbol, *map(_cell, (book.atoms, book.ghosts, book.nuclear_charge, replaced))])
+    total = (sum(b.atoms for b in ledger.by_element), ledger.ghost_atoms, ledger.nuclear_charge)
+    rows.append(["all", *map(_cell, (*total, ledger.core_electrons_replaced))])
+    widths = [max(len(row[i]) for row in rows) for i in range(len(rows[0]))]
+    return [
+        "  ".join([row[0].ljust(widths[0]), *(row[i].rjust(widths[i]) for i in range(1, len(row)))])
+        for row in rows
+    ]
+
+
+def _cell(count: int | None) -> str:
+    return "unknown" if count is None else str(count)
+
+
+def _balance(ledger: Ledger) -> str:
+    """Return the sum of the books in words and numbers."""
+    if ledger.n_electrons is None:
+        return (
+            f"nuclear charge {ledger.nuclear_charge}, charge {signed(ledger.charge)}; electrons unknown, "
+            "because what the core potentials replace is"
+        )
+    core = f" less {ledger.core_electrons_replaced} in core potentials" if ledger.core_electrons_replaced else ""
+    split = (
+        "alpha and beta cannot be stated"
+        if ledger.n_alpha is None
+        else f"{ledger.n_alpha} alpha, {ledger.n_beta} beta, {ledger.n_unpaired} unpaired"
+    )
+    total = f"nuclear charge {ledger.nuclear_charge}{core}, charge {signed(ledger.charge)}"
+    return f"{total}: {counted(ledger.n_electrons, 'electron')}, {split}"
+
+
+def _formula(books: tuple[ElementBook, ...]) -> str:
+    """Return the formula in Hill's order: carbon, hydrogen, then by the alphabet; without carbon all by it."""
+    counts = {book.symbol: book.atoms for book in books if book.atoms}
+    first = [symbol for symbol in ("C", "H") if symbol in counts] if "C" in counts else []
+    order = first + sorted(counts.keys() - set(first))
+    return "".join(symbol + (str(counts[symbol]) if counts[symbol] > 1 else "") for symbol in order)
+
+
+def _expected(expected: Expected, page: Page) -> Iterator[str]:
+    if expected.multiplicity is None:
+        return
+    sure = expected.multiplicity_confidence
+    share = "" if sure is None else f" (confidence {sure:.2g})"
+    yield from page.entry("expected", f"multiplicity {expected.multiplicity}{share}")
+
+
+def _not_judged(report: DeckReport, page: Page) -> Iterator[str]:
+    """Yield the rules that could not answer, together where the reason is the same."""
+    rules_by_reason: dict[str, list[str]] = {}
+    for word in report.not_judged:
+        rules_by_reason.setdefault(word.because, []).append(word.rule)
+    label = "not judged"
+    for because, rules in rules_by_reason.items():
+        yield from page.entry(label, f"{', '.join(dict.fromkeys(rules))}: {plain(because)}")
+        label = ""
