@@ -203,9 +203,8 @@ def _heavy_cation(z: int, n_electrons: int) -> tuple[Occupation, str]:
         return _joined(rn, ((5, 3, outside_rn),)), "actinides from 3+ on: 5f only, then Hund's rules"
     if z > ACTINIDES[-1] and outside_rn == capacity(3):
         return _joined(rn, ((5, 3, outside_rn),)), "5f full, nothing outside it"
-    raise NotDerivable(
-        f"no ground level of {written_ion(z, z - n_electrons)} is stored, and f, d and s are too close to derive one"
-    )
+    ion = written_ion(z, z - n_electrons)
+    raise NotDerivable(f"no ground level of {ion} is stored, and f, d and s lie too close to derive one")
 
 
 def _anion(z: int, charge: int) -> tuple[Occupation, str]:

@@ -39,7 +39,7 @@ def capacity(ell: int) -> int:
 def radial_nodes(n: int, ell: int) -> int:
     """Return the radial nodes of a subshell, n-l-1; raise ValueError where there is no such subshell."""
     if not 0 <= ell < n:
-        raise ValueError(f"there is no subshell with n = {n} and l = {l}")
+        raise ValueError(f"there is no subshell with n = {n} and l = {ell}")
     return n - ell - 1
 
 

@@ -123,7 +123,7 @@ def hund_ground_level(ell: int, n: int) -> Level:
     """
     half = 2 * ell + 1
     if not 0 <= n <= 2 * half:
-        raise ValueError(f"a shell of quantum number {l} holds no {n} electrons")
+        raise ValueError(f"a shell of quantum number {ell} holds no {n} electrons")
     n_unpaired = min(n, 2 * half - n)
     orbital = sum(range(ell, ell - n % half, -1))
     term = Term(n_unpaired + 1, orbital, odd=(ell * n) % 2 == 1)
