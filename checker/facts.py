@@ -20,6 +20,8 @@ from checker.model import Job
 
 if TYPE_CHECKING:
     from checker.chemistry.configurations import GroundLevel
+    from checker.chemistry.contacts import LengthSlip, Nearest
+    from checker.chemistry.irreps import PointGroup
 
 UNSTATED_MULTIPLICITY = "the deck states no multiplicity"
 
@@ -168,6 +170,35 @@ class Facts:
         if self.free_atom is None:
             raise NotDerivable("the species is no free atom")
         return ground_level(self.free_atom, self.charge)
+
+    @cached_property
+    def nearest(self) -> "Nearest | None":
+        """Each real atom's nearest neighbour in units of bond lengths; None where there is but one atom or none."""
+        from checker.chemistry.contacts import nearest_by_bond_length
+
+        if len(self.real_numbers) < 2:
+            return None
+        return nearest_by_bond_length(self.real_numbers, self.real_coordinates)
+
+    @cached_property
+    def length_slip(self) -> "LengthSlip | None":
+        """The sign that the lengths are in another unit than stated, or None."""
+        from checker.chemistry.contacts import length_slip
+
+        return None if self.nearest is None else length_slip(self.real_numbers, self.nearest)
+
+    @cached_property
+    def point_group(self) -> "PointGroup":
+        """The group the job is to run in; not derivable where none is stated or there is no such group."""
+        from checker.chemistry.irreps import point_group
+
+        written = self.job.symmetry.point_group
+        if written is None:
+            raise NotDerivable("the deck states no point group")
+        group = point_group(written)
+        if group is None:
+            raise NotDerivable(f"there is no point group {written!r}")
+        return group
 
     @cached_property
     def expected(self) -> Expected:

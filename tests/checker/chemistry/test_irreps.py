@@ -103,7 +103,8 @@ def test_linear_and_atomic_irreps() -> None:
     ("written", "symbol"),
     [
         ("c2v", "C2v"), ("C_2v", "C2v"), ("C₂ᵥ", "C2v"), ("C_{2v}", "C2v"), (" D2H ", "D2h"), ("TD", "Td"),
-        ("oh", "Oh"), ("C∞v", "C∞v"), ("Cinfv", "C∞v"), ("D_infh", "D∞h"), ("Dooh", "D∞h"), ("dinfinityh", "D∞h"), ("kh", "Kh"),
+        ("oh", "Oh"), ("C∞v", "C∞v"), ("Cinfv", "C∞v"), ("D_infh", "D∞h"),
+        ("Dooh", "D∞h"), ("dinfinityh", "D∞h"), ("kh", "Kh"),
         ("C1h", "Cs"), ("C1v", "Cs"), ("S1", "Cs"), ("S2", "Ci"), ("C3i", "S6"), ("S3", "C3h"), ("C5i", "S10"),
     ],
 )  # fmt: skip
