@@ -50,6 +50,10 @@ class Pairing:
         self.left[atom] = self.left.get(atom, 0) + 1
         self._partners.setdefault(atom, [])
 
+    def partners(self, atom: int) -> tuple[int, ...]:
+        """Return the atoms to which this one may form multiple bonds."""
+        return tuple(self._partners.get(atom, ()))
+
     def bonds_of(self, atom: int) -> int:
         """Return the number of multiple bonds at an atom, beyond its single bonds."""
         return sum(self.between(atom, other) for other in self._partners.get(atom, ()))
@@ -110,7 +114,7 @@ class Pairing:
         return reached
 
     def shift(self, path: list[int]) -> None:
-        """Add and remove bonds by turns along an alternating path; an open slot moves to its end or is paired there."""
+        """Add and remove bonds by turns along an alternating path: the slot moves to its end, or is paired."""
         for place, (i, j) in enumerate(pairwise(path)):
             self._change(i, j, -1 if place % 2 else 1)
 
@@ -138,8 +142,6 @@ class Pairing:
 
     def _another_is_open(self, start: int) -> bool:
         """Without this look an odd ring system would be searched to the end of the budget, in vain."""
-        if sum(1 for slots in self.left.values() if slots) < 2:
-            return False
         seen, waiting = {start}, [start]
         while waiting:
             for j in self._partners[waiting.pop()]:

@@ -1,0 +1,89 @@
+"""How likely a charge and multiplicity are for a structure with given open valences.
+
+A small model, not a theory: closed valences are likeliest, a radical at a site is less so, an electron taken from
+or added to a closed structure less again; charges near zero are commoner than high ones. The numbers are weights
+relative to each other, fitted by hand to the measured ranking (tests/benchmarks/parity_ranking.py).
+"""
+
+from collections.abc import Iterator
+
+from checker.chemistry.valence import Tally
+
+CHARGE_WEIGHTS = (1.0, 0.35, 0.12, 0.05, 0.02)
+"""Of |charge| 0, 1, 2, 3 and more."""
+
+RADICAL_AT_LONE_PAIRS = 0.6
+RADICAL_AT_CARBON = 0.6
+RADICAL_AT_CATION = 0.25
+RADICAL_AT_METAL = 0.8
+CARBON_ION = 0.3
+HOLES = (1.0, 0.12, 0.01)
+"""None, one, two electrons taken from closed valences."""
+ELECTRONS = (1.0, 0.07, 0.004)
+"""None, one, two electrons added where no valence is open."""
+EXCITED = 0.05
+"""A pair of electrons unpaired without a site that asks for it."""
+COUPLED = 0.5
+"""Two open sites coupled to a singlet, or left as a triplet: either."""
+TRIPLET_PAIR = (0.15, 0.85)
+"""O2 and its like: singlet, triplet."""
+METAL_STATE = 0.3
+"""Any state of a metal of variable charge: nothing is known of it here."""
+
+_MOST_OPEN = 3
+
+
+def state_weight(tally: Tally, charge: int, multiplicity: int) -> float:
+    """Return the relative weight, 0 to 1, of a charge and a multiplicity (2S+1) for the sites of a structure."""
+    weight = CHARGE_WEIGHTS[min(abs(charge), len(CHARGE_WEIGHTS) - 1)]
+    if tally.unknown:
+        return weight * METAL_STATE
+    return weight * max((way for way in _ways(tally, charge, multiplicity)), default=0.0)
+
+
+def _ways(tally: Tally, charge: int, multiplicity: int) -> Iterator[float]:
+    """Weight of each way to close some sites, leave others open, and take or add the electrons that remain."""
+    for closed, n_open, weight in _closures(tally):
+        holes, electrons = max(0, charge - closed), max(0, closed - charge)
+        if holes < len(HOLES) and electrons < len(ELECTRONS):
+            unpaired = n_open + holes + electrons
+            weight *= HOLES[holes] * ELECTRONS[electrons]  # noqa: PLW2901
+            yield weight * _spin_weight(tally, unpaired, multiplicity - 1)
+
+
+def _closures(tally: Tally) -> Iterator[tuple[int, int, float]]:
+    """Yield (charge, open sites, weight) of the ways to close the sites; many sites are closed but for a few."""
+    flexible = tally.flexible if tally.flexible <= _MOST_OPEN else tally.flexible % 2
+    for radicals in range(min(tally.anions, _MOST_OPEN) + 1):
+        for cation_radicals in range(min(tally.cations, 1) + 1):
+            for metal_radicals in range(min(tally.subvalent, 2) + 1):
+                for cations in range(flexible + 1):
+                    for anions in range(flexible - cations + 1):
+                        rest = flexible - cations - anions
+                        charge = tally.base - (tally.anions - radicals) + (tally.cations - cation_radicals)
+                        charge += (tally.subvalent - metal_radicals) + cations - anions
+                        weight = RADICAL_AT_LONE_PAIRS**radicals * RADICAL_AT_CATION**cation_radicals
+                        weight *= RADICAL_AT_METAL**metal_radicals * CARBON_ION ** (cations + anions)
+                        yield (
+                            charge,
+                            radicals + cation_radicals + metal_radicals + rest,
+                            weight * RADICAL_AT_CARBON**rest,
+                        )
+
+
+def _spin_weight(tally: Tally, unpaired: int, wanted: int) -> float:
+    """Weight of `wanted` unpaired electrons where the sites have `unpaired`; 0 for the wrong parity."""
+    if (unpaired - wanted) % 2:
+        return 0.0
+    weight = 1.0
+    if tally.paired_triplets and unpaired < 2:
+        weight *= TRIPLET_PAIR[1 if wanted >= unpaired + 2 else 0]
+        unpaired += 2 if wanted >= unpaired + 2 else 0
+    if tally.carbenes and wanted >= unpaired:
+        weight *= COUPLED
+        unpaired += min(2 * tally.carbenes, wanted - unpaired)
+    if wanted > unpaired:
+        return weight * float(EXCITED ** ((wanted - unpaired) // 2))
+    if unpaired > 1:
+        weight *= COUPLED
+    return weight
