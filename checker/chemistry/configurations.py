@@ -134,7 +134,7 @@ def _stored(row: tables.GroundLevelRow) -> GroundLevel:
     if not row.bound:
         raise NotDerivable(f"{ion} is not stable: the extra electron is not bound ({row.source})")
     if not row.configuration:
-        raise NotDerivable(f"the ground level of {ion} is not settled: {row.note}")
+        raise NotDerivable(f"the ground level of {ion} is not settled ({row.note})")
     term = row.leading_term or (row.level if row.level[0].isdigit() else None)
     return GroundLevel(
         atomic_number=row.z,

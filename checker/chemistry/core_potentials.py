@@ -79,7 +79,7 @@ def published_counts(z: int) -> tuple[PublishedCount, ...]:
 
 
 def nearest_count(z: int, replaced: int) -> PublishedCount | None:
-    """Return the published count nearest to a number; of two as near, the one with fewer f electrons in the core."""
+    """Return the published count nearest to a number; of two as near, the one with fewer f electrons inside."""
     return min(
         published_counts(z),
         key=lambda count: (abs(count.electrons - replaced), count.f_electrons_in_core),

@@ -36,7 +36,7 @@ def test_no_set_with_core_potentials_of_the_catalogue_is_missing() -> None:
 
 
 def test_trivalent_lanthanides_of_dolg_1989() -> None:
-    """Dolg, Stoll, Savin, Preuss, Theor. Chim. Acta 75, 173 (1989): 46 + 4f^n, Ce 47, Gd 53, Lu 60 (from memory)."""
+    """Dolg, Stoll, Savin, Preuss, Theor. Chim. Acta 75, 173 (1989): 46 + 4f^n, Gd 53, Lu 60 (from memory)."""
     for z, n_f in zip(range(58, 72), range(1, 15), strict=True):
         held = {(count.electrons, count.f_electrons_in_core) for count in published_counts(z)}
         assert (46 + n_f, n_f) in held

@@ -19,6 +19,7 @@ SOURCES = {
     "Andersen 1999",
     "superheavy calculations",
     "affinity measured 2020",
+    "anion photoelectron spectra",
 }
 
 

@@ -13,31 +13,31 @@ from checker.chemistry.core_potentials import (
 )
 from checker.errors import NotDerivable
 
-I, GD, TB, LU, U = 53, 64, 65, 71, 92
+IODINE, GD, TB, LU, U = 53, 64, 65, 71, 92
 
 
 @pytest.mark.parametrize(
     ("name", "z", "replaced"),
     [
-        ("def2-TZVP", I, 28),
-        ("DEF2TZVP", I, 28),
-        ("def2 tzvp", I, 28),
-        ("def2-ecp", I, 28),
+        ("def2-TZVP", IODINE, 28),
+        ("DEF2TZVP", IODINE, 28),
+        ("def2 tzvp", IODINE, 28),
+        ("def2-ecp", IODINE, 28),
         ("def2_ECP", 6, 0),
         ("def2-TZVP", 26, 0),
-        ("LANL2DZ", I, 46),
+        ("LANL2DZ", IODINE, 46),
         ("lanl2dz", 8, 0),
-        ("cc-pVTZ-PP", I, 28),
+        ("cc-pVTZ-PP", IODINE, 28),
         ("cc-pvtz-pp", 6, 0),
         ("cc-pVTZ-PP", 19, 10),
         ("cc-pVTZ", 17, 0),
         ("6-31g*", 8, 0),
-        ("ECP28MDF", I, 28),
+        ("ECP28MDF", IODINE, 28),
         ("def2-TZVP", U, None),
         ("cc-pVTZ", U, None),
-        ("ECP60MWB", I, None),
-        ("house-made", I, None),
-        ("", I, None),
+        ("ECP60MWB", IODINE, None),
+        ("house-made", IODINE, None),
+        ("", IODINE, None),
     ],
 )
 def test_names_are_read_as_people_write_them(name: str, z: int, replaced: int | None) -> None:
@@ -51,7 +51,7 @@ def test_a_known_set_that_lacks_an_element_is_known() -> None:
 
 
 def test_counts_of_iodine_are_those_of_its_potentials() -> None:
-    counts = {count.electrons for count in published_counts(I)}
+    counts = {count.electrons for count in published_counts(IODINE)}
     assert counts == {28, 36, 46}
 
 
@@ -62,7 +62,7 @@ def test_hydrogen_has_none() -> None:
 
 @pytest.mark.parametrize(("replaced", "nearest"), [(27, 28), (30, 28), (45, 46), (54, 46), (0, 28)])
 def test_the_nearest_count_is_suggested(replaced: int, nearest: int) -> None:
-    found = nearest_count(I, replaced)
+    found = nearest_count(IODINE, replaced)
     assert found is not None
     assert found.electrons == nearest
 
@@ -79,7 +79,7 @@ def test_the_nearest_count_is_suggested(replaced: int, nearest: int) -> None:
         pytest.param(U, 81, 3, 3, id="trivalent U"),
         pytest.param(U, 60, 0, 0, id="small core U: 5f is counted"),
         pytest.param(U, 78, 0, 0, id="large core U: 5f is counted"),
-        pytest.param(I, 28, 0, 0, id="no f shell"),
+        pytest.param(IODINE, 28, 0, 0, id="no f shell"),
     ],
 )
 def test_f_electrons_in_the_core(z: int, replaced: int, n_f: int, unpaired: int) -> None:
