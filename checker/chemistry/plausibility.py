@@ -5,7 +5,9 @@ or added to a closed structure less again; charges near zero are commoner than h
 relative to each other, fitted by hand to the measured ranking (tests/benchmarks/parity_ranking.py).
 """
 
+import math
 from collections.abc import Iterator
+from itertools import product
 
 from checker.chemistry.valence import Tally
 
@@ -51,24 +53,35 @@ def _ways(tally: Tally, charge: int, multiplicity: int) -> Iterator[float]:
             yield weight * _spin_weight(tally, unpaired, multiplicity - 1)
 
 
-def _closures(tally: Tally) -> Iterator[tuple[int, int, float]]:
-    """Yield (charge, open sites, weight) of the ways to close the sites; many sites are closed but for a few."""
+Way = tuple[int, int, float]
+"""Charge, open sites, weight."""
+
+
+def _closures(tally: Tally) -> Iterator[Way]:
+    """Yield the ways to close the sites; of many like sites, all are closed but for a few."""
     flexible = tally.flexible if tally.flexible <= _MOST_OPEN else tally.flexible % 2
-    for radicals in range(min(tally.anions, _MOST_OPEN) + 1):
-        for cation_radicals in range(min(tally.cations, 1) + 1):
-            for metal_radicals in range(min(tally.subvalent, 2) + 1):
-                for cations in range(flexible + 1):
-                    for anions in range(flexible - cations + 1):
-                        rest = flexible - cations - anions
-                        charge = tally.base - (tally.anions - radicals) + (tally.cations - cation_radicals)
-                        charge += (tally.subvalent - metal_radicals) + cations - anions
-                        weight = RADICAL_AT_LONE_PAIRS**radicals * RADICAL_AT_CATION**cation_radicals
-                        weight *= RADICAL_AT_METAL**metal_radicals * CARBON_ION ** (cations + anions)
-                        yield (
-                            charge,
-                            radicals + cation_radicals + metal_radicals + rest,
-                            weight * RADICAL_AT_CARBON**rest,
-                        )
+    groups = (
+        _radicals(tally.anions, -1, RADICAL_AT_LONE_PAIRS),
+        _radicals(tally.cations, 1, RADICAL_AT_CATION),
+        _radicals(tally.subvalent, 1, RADICAL_AT_METAL),
+        [
+            (
+                plus - minus,
+                flexible - plus - minus,
+                CARBON_ION ** (plus + minus) * RADICAL_AT_CARBON ** (flexible - plus - minus),
+            )
+            for plus in range(flexible + 1)
+            for minus in range(flexible - plus + 1)
+        ],
+    )
+    for ways in product(*groups):
+        charges, opens, weights = zip(*ways, strict=True)
+        yield tally.base + sum(charges), sum(opens), math.prod(weights)
+
+
+def _radicals(sites: int, charge: int, weight: float) -> list[Way]:
+    """Return the ways to leave some of these sites open; `charge` is what a closed one carries."""
+    return [(charge * (sites - n_open), n_open, weight**n_open) for n_open in range(min(sites, _MOST_OPEN) + 1)]
 
 
 def _spin_weight(tally: Tally, unpaired: int, wanted: int) -> float:

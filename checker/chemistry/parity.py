@@ -1,0 +1,302 @@
+"""What the author most likely meant, where electron count and multiplicity do not fit together.
+
+Each cause is a single slip: the multiplicity or the charge off by one, a hydrogen lost or one too many, an atom
+pasted twice, a core potential miscounted. Its weight is the prior of the slip times the weight of the job that
+mending it leaves: do the valences then close with that charge and multiplicity, and is there room for the
+hydrogen? How well this ranks is measured in tests/outside/test_g2_parity.py.
+
+Provides `rank_causes` and the record `Cause`.
+"""
+
+import enum
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass, replace
+
+import numpy as np
+
+from checker.chemistry.bonding import Bonds, perceive_bonds
+from checker.chemistry.hydrogens import HydrogenEdit, lost_hydrogens, surplus_hydrogens
+from checker.chemistry.neighbours import Floats, Ints
+from checker.chemistry.plausibility import CHARGE_WEIGHTS, state_weight
+from checker.chemistry.valence import Valence, assign_valences
+from checker.elements import name_of, symbol_of
+from checker.errors import NotDerivable
+
+MOST_CAUSES = 8
+LEAST_SHARE = 0.004
+"""Causes below this share of the weight are not worth a line."""
+
+PRIOR_MULTIPLICITY = 1.0
+PRIOR_CHARGE = 1.0
+PRIOR_HYDROGEN_LOST = 1.2
+PRIOR_HYDROGEN_SURPLUS = 0.5
+PRIOR_ATOM_DOUBLED = 30.0
+PRIOR_CORE_UNPUBLISHED = 3.0
+PRIOR_CORE_PUBLISHED = 0.03
+NOT_THE_GROUND_LEVEL = 0.1
+"""Weight of a multiplicity of a free atom that is not that of its ground level."""
+UNUSUAL_CHARGE = 0.3
+"""Weight of a charge that the free atom's element does not usually have."""
+
+
+class Slip(enum.StrEnum):
+    """The kinds of slip."""
+
+    MULTIPLICITY = "multiplicity"
+    CHARGE = "charge"
+    HYDROGEN_MISSING = "hydrogen-missing"
+    HYDROGEN_SURPLUS = "hydrogen-surplus"
+    ATOM_DOUBLED = "atom-doubled"
+    CORE_POTENTIAL = "core-potential"
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Cause:
+    """One slip and its mending. Atom indices count from 0 over the atoms given.
+
+    Attributes
+    ----------
+    kind : what slipped.
+    weight : 0 to 1; the weights of a list add up to 1.
+    reason : one clause in the words of chemistry.
+    multiplicity, charge : the new value, where that is the mending.
+    atoms : the atom that lost a hydrogen, the surplus hydrogen, or the copies to delete.
+    position : (x, y, z) angstrom of the hydrogen to add.
+    core_electrons : atomic number and new number of electrons replaced per atom.
+    """
+
+    kind: Slip
+    weight: float
+    reason: str
+    multiplicity: int | None = None
+    charge: int | None = None
+    atoms: tuple[int, ...] = ()
+    position: tuple[float, float, float] | None = None
+    core_electrons: tuple[int, int] | None = None
+
+
+def rank_causes(
+    numbers: Ints,
+    coordinates: Floats,
+    charge: int,
+    multiplicity: int,
+    *,
+    replaced: Mapping[int, int] | None = None,
+    published: Mapping[int, Sequence[int]] | None = None,
+    bonds: Bonds | None = None,
+) -> tuple[Cause, ...]:
+    """Rank the slips that may have led to a multiplicity that the electrons do not allow.
+
+    Parameters
+    ----------
+    numbers : (n,) int array of atomic numbers, real atoms only.
+    coordinates : (n, 3) float array, angstrom.
+    charge, multiplicity : as stated.
+    replaced : electrons replaced per atom by a core potential, by atomic number.
+    published : counts that published potentials use, by atomic number.
+    bonds : as found by `perceive_bonds`; found here if left out.
+
+    Returns
+    -------
+    The causes, likeliest first; empty where electrons and multiplicity fit.
+
+    Raises
+    ------
+    NotDerivable
+        If the atoms lie so dense that they are no molecule.
+    """
+    numbers, coordinates = np.asarray(numbers, dtype=np.int64), np.asarray(coordinates, dtype=np.float64)
+    cores = dict(replaced or {})
+    if (_count_electrons(numbers, cores) - charge) % 2 != multiplicity % 2:
+        return ()
+    bonds = bonds or perceive_bonds(numbers, coordinates)
+    copies = _copies(numbers, bonds)
+    job = _Job(numbers, coordinates, charge, multiplicity, cores, published or {}, copies)
+    if copies:
+        kept = np.setdiff1d(np.arange(len(numbers)), copies)
+        job = replace(job, numbers=numbers[kept], coordinates=coordinates[kept], kept=kept)
+        bonds = perceive_bonds(job.numbers, job.coordinates)
+    valence = assign_valences(job.numbers, job.coordinates, bonds)
+    return _normalised(job.causes(valence))
+
+
+def _count_electrons(numbers: Ints, cores: Mapping[int, int]) -> int:
+    """Count the electrons of the neutral atoms outside the replaced cores."""
+    replaced = sum(int(np.count_nonzero(numbers == z)) * count for z, count in cores.items())
+    return int(numbers.sum()) - replaced
+
+
+def _copies(numbers: Ints, bonds: Bonds) -> tuple[int, ...]:
+    """Return the later atom of each pair of like nuclei that lie on each other."""
+    return tuple(sorted({j for i, j, _ in bonds.overlaps if numbers[i] == numbers[j]}))
+
+
+def _normalised(causes: Iterator[Cause]) -> tuple[Cause, ...]:
+    ranked = sorted(causes, key=lambda cause: -cause.weight)
+    total = sum(cause.weight for cause in ranked)
+    kept = [cause for cause in ranked if cause.weight >= LEAST_SHARE * total][:MOST_CAUSES]
+    share = sum(cause.weight for cause in kept)
+    return tuple(replace(cause, weight=cause.weight / share) for cause in kept) if share else ()
+
+
+@dataclass(frozen=True)
+class _Job:
+    """The job as stated, with copies of atoms taken out."""
+
+    numbers: Ints
+    coordinates: Floats
+    charge: int
+    multiplicity: int
+    cores: Mapping[int, int]
+    published: Mapping[int, Sequence[int]]
+    copies: tuple[int, ...]
+    kept: Ints | None = None
+
+    def causes(self, valence: Valence) -> Iterator[Cause]:
+        yield from self._doubled(valence)
+        yield from self._multiplicities(valence)
+        yield from self._charges(valence)
+        yield from self._hydrogens(valence)
+        yield from self._cores(valence)
+
+    def _electrons(self) -> int:
+        return _count_electrons(self.numbers, self.cores) - self.charge
+
+    def _weight(self, valence: Valence, charge: int, multiplicity: int) -> float:
+        """Weight of a charge and multiplicity for the atoms as they stand."""
+        if len(self.numbers) != 1 or self.cores:
+            return state_weight(valence.tally, charge, multiplicity)
+        return _free_atom_weight(int(self.numbers[0]), charge, multiplicity)
+
+    def _index(self, atom: int) -> int:
+        return atom if self.kept is None else int(self.kept[atom])
+
+    def _label(self, atom: int) -> str:
+        return f"{name_of(int(self.numbers[atom]))} {self._index(atom) + 1}"
+
+    def _doubled(self, valence: Valence) -> Iterator[Cause]:
+        """Blame the copies if taking them out changes the parity of the electrons."""
+        if self._electrons() % 2 == self.multiplicity % 2:
+            return
+        every = dict.fromkeys(self.copies)
+        labels = ", ".join(str(atom + 1) for atom in list(every)[:6]) + (" ..." if len(every) > 6 else "")
+        one = len(every) == 1
+        reason = (
+            f"atom {labels} lies on another of its element"
+            if one
+            else f"atoms {labels} lie on others of their element"
+        )
+        yield Cause(
+            kind=Slip.ATOM_DOUBLED,
+            weight=PRIOR_ATOM_DOUBLED * max(0.05, self._weight(valence, self.charge, self.multiplicity)),
+            reason=reason,
+            atoms=self.copies,
+        )
+
+    def _multiplicities(self, valence: Valence) -> Iterator[Cause]:
+        for multiplicity in (self.multiplicity - 1, self.multiplicity + 1):
+            weight = self._weight(valence, self.charge, multiplicity) if multiplicity >= 1 else 0.0
+            if weight:
+                yield Cause(
+                    kind=Slip.MULTIPLICITY,
+                    weight=PRIOR_MULTIPLICITY * weight,
+                    reason=self._why_multiplicity(valence, multiplicity),
+                    multiplicity=multiplicity,
+                )
+
+    def _charges(self, valence: Valence) -> Iterator[Cause]:
+        for charge in (self.charge - 1, self.charge + 1):
+            weight = self._weight(valence, charge, self.multiplicity)
+            if weight:
+                yield Cause(
+                    kind=Slip.CHARGE,
+                    weight=PRIOR_CHARGE * weight,
+                    reason=self._why_charge(valence, charge),
+                    charge=charge,
+                )
+
+    def _hydrogens(self, valence: Valence) -> Iterator[Cause]:
+        lost = [(edit, Slip.HYDROGEN_MISSING, PRIOR_HYDROGEN_LOST) for edit in lost_hydrogens(valence)]
+        surplus = [(edit, Slip.HYDROGEN_SURPLUS, PRIOR_HYDROGEN_SURPLUS) for edit in surplus_hydrogens(valence)]
+        for edit, kind, prior in (*lost, *surplus):
+            weight = prior * edit.fit * state_weight(edit.tally_after, self.charge, self.multiplicity)
+            if weight:
+                yield self._hydrogen_cause(edit, kind, weight)
+
+    def _hydrogen_cause(self, edit: HydrogenEdit, kind: Slip, weight: float) -> Cause:
+        return Cause(
+            kind=kind,
+            weight=weight,
+            reason=f"{self._label(edit.atom)} {edit.reason}"
+            + ("" if edit.centre is None else " " + self._label(edit.centre)),
+            atoms=(self._index(edit.atom),),
+            position=edit.position,
+        )
+
+    def _cores(self, valence: Valence) -> Iterator[Cause]:
+        for z, stated in self.cores.items():
+            if int(np.count_nonzero(self.numbers == z)) % 2 == 0:
+                continue
+            known = tuple(self.published.get(z, ()))
+            prior = PRIOR_CORE_PUBLISHED if stated in known or not known else PRIOR_CORE_UNPUBLISHED
+            odd_steps = [count for count in known if (count - stated) % 2]
+            for rank, count in enumerate(sorted(odd_steps, key=lambda count: (abs(count - stated), count))):
+                yield Cause(
+                    kind=Slip.CORE_POTENTIAL,
+                    weight=prior * 0.3**rank * max(0.05, self._weight(valence, self.charge, self.multiplicity)),
+                    reason=f"published potentials of {symbol_of(z)} replace {count} electrons, not {stated}",
+                    core_electrons=(z, count),
+                )
+
+    def _why_multiplicity(self, valence: Valence, multiplicity: int) -> str:
+        if len(self.numbers) == 1:
+            level = _ground_multiplicity(int(self.numbers[0]), self.charge)
+            if level == multiplicity:
+                return f"the ground level of {_ion(self.numbers, self.charge)} has multiplicity {multiplicity}"
+        if multiplicity == 1 and valence.implied_charge == self.charge:
+            return "all valences are closed, which makes a singlet"
+        if multiplicity == valence.tally.open + 1 and valence.lewis.open:
+            return f"{_places(self, valence)} unpaired electrons would be {multiplicity - 1}"
+        return f"{multiplicity - 1} unpaired electrons fit the electron count"
+
+    def _why_charge(self, valence: Valence, charge: int) -> str:
+        if valence.implied_charge == charge:
+            return f"closed valences give charge {charge:+d}" if charge else "closed valences give charge 0"
+        if len(self.numbers) == 1 and _ground_multiplicity(int(self.numbers[0]), charge) == self.multiplicity:
+            return f"the ground level of {_ion(self.numbers, charge)} has multiplicity {self.multiplicity}"
+        if valence.implied_charge is not None and abs(charge) > abs(valence.implied_charge):
+            step = "one electron fewer" if charge > valence.implied_charge else "one electron more"
+            return f"{step} than the closed valences hold"
+        return f"charge {charge:+d} fits multiplicity {self.multiplicity}" if charge else "a neutral species fits"
+
+
+def _places(job: _Job, valence: Valence) -> str:
+    open_atoms = sorted(valence.lewis.open)[:3]
+    names = ", ".join(job._label(atom) for atom in open_atoms)
+    return f"{names} {'has' if len(open_atoms) == 1 else 'have'} an open valence;"
+
+
+def _free_atom_weight(z: int, charge: int, multiplicity: int) -> float:
+    """Weight of a state of a free atom: usual charge, multiplicity of the ground level."""
+    from checker.chemistry.configurations import usual_charges
+
+    weight = CHARGE_WEIGHTS[min(abs(charge), len(CHARGE_WEIGHTS) - 1)]
+    weight *= 1.0 if charge == 0 or charge in usual_charges(z) else UNUSUAL_CHARGE
+    ground = _ground_multiplicity(z, charge)
+    if ground is None:
+        return weight * NOT_THE_GROUND_LEVEL if charge <= z else 0.0
+    return weight * (1.0 if ground == multiplicity else NOT_THE_GROUND_LEVEL)
+
+
+def _ground_multiplicity(z: int, charge: int) -> int | None:
+    from checker.chemistry.configurations import ground_level
+
+    try:
+        return ground_level(z, charge).multiplicity
+    except NotDerivable:
+        return None
+
+
+def _ion(numbers: Ints, charge: int) -> str:
+    sign = "+" if charge > 0 else "-"
+    return symbol_of(int(numbers[0])) + (f" {abs(charge)}{sign}" if charge else "")
