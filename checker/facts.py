@@ -117,9 +117,9 @@ class Facts:
         symbol = symbol_of(z)
         if symbol in potential.replaced:
             return potential.replaced[symbol]
-        if potential.name is None:
+        name = self.potential_set(symbol)
+        if name is None:
             return 0
-        name = self._potential_set(symbol, potential.name)
         known = electrons_replaced(name, z)
         if known is not None:
             return known
@@ -130,10 +130,14 @@ class Facts:
             "state core_potential.replaced"
         )
 
-    def _potential_set(self, symbol: str, name: str) -> str:
-        if name != "from-basis":
-            return name
-        basis = self.job.basis
+    def potential_set(self, symbol: str) -> str | None:
+        """Return the set whose core potential an element has, None where the deck names none.
+
+        Not derivable where it is to come from the basis and the deck names no basis.
+        """
+        potential, basis = self.job.core_potential, self.job.basis
+        if potential is None or potential.name != "from-basis":
+            return None if potential is None else potential.name
         if basis is None:
             raise NotDerivable("the core potential is to come from the basis, and the deck names no basis")
         return basis.for_element.get(symbol, basis.name)
@@ -173,7 +177,7 @@ class Facts:
 
     @cached_property
     def nearest(self) -> "Nearest | None":
-        """Each real atom's nearest neighbour in units of bond lengths; None where there is but one atom or none."""
+        """Nearest neighbour of each real atom, in units of bond lengths; None where there are fewer than two."""
         from checker.chemistry.contacts import nearest_by_bond_length
 
         if len(self.real_numbers) < 2:
@@ -204,12 +208,30 @@ class Facts:
     def expected(self) -> Expected:
         """The state we would expect; empty where we do not know."""
         try:
-            multiplicity = self.ground_level.multiplicity
+            multiplicity = self.ground_multiplicity
         except NotDerivable:
             return Expected()
-        if multiplicity is None or self.f_electrons_in_core:
-            return Expected()
         return Expected(multiplicity=multiplicity, multiplicity_confidence=self.ground_level_confidence)
+
+    @cached_property
+    def ground_multiplicity(self) -> int:
+        """2S+1 of the ground level of a free atom or ion, as the job counts electrons.
+
+        Not derivable for molecules, for ions whose surroundings decide, where the level has no LS name, and where
+        unpaired f electrons sit in the core potential.
+        """
+        from checker.chemistry.configurations import written_ion
+        from checker.chemistry.core_potentials import f_unpaired
+
+        level, ion = self.ground_level, written_ion(self.ground_level.atomic_number, self.charge)
+        if self.environment in ("embedded", "crystal"):
+            raise NotDerivable(f"{ion} is not free: in an environment of kind {self.environment!r} that decides")
+        n_f = self.f_electrons_in_core
+        if f_unpaired(n_f):
+            raise NotDerivable(f"{n_f} f electrons of {ion} sit in its core potential, their spin is not counted")
+        if level.multiplicity is None:
+            raise NotDerivable(f"the ground level of {ion}, {level.level}, has no LS name and so no multiplicity")
+        return level.multiplicity
 
     @property
     def ground_level_confidence(self) -> float:
@@ -219,9 +241,15 @@ class Facts:
     @cached_property
     def f_electrons_in_core(self) -> int:
         """Open-shell f electrons per atom that a core potential replaces, at most over the elements present."""
-        from checker.chemistry.core_potentials import f_electrons_in_core
+        return max((self.f_in_core_of(z) for z in self.elements), default=0)
 
-        if self.job.core_potential is None:
+    def f_in_core_of(self, z: int) -> int:
+        """Return the electrons of an open f shell that the core potential of one of the elements present holds.
+
+        Not derivable where the potential is unknown, or where its size does not tell.
+        """
+        from checker.chemistry.core_potentials import f_electrons_in_core, published_counts
+
+        if self.job.core_potential is None or not any(count.f_electrons_in_core for count in published_counts(z)):
             return 0
-        replaced = self.replaced_per_atom
-        return max((f_electrons_in_core(z, replaced[z]) for z in self.elements), default=0)
+        return f_electrons_in_core(z, self._replaced(z), self.potential_set(symbol_of(z)))
