@@ -1,6 +1,27 @@
 """The rules, one file each. ALL_RULES is their reading order, which is also that of equal findings."""
 
 from checker.registry import Rule
-from rules import spin_parity
+from rules import (
+    acceptance_lapsed,
+    close_contact,
+    deck_unreadable,
+    isolated_atom,
+    length_unit,
+    periodic_cell,
+    rule_failed,
+    spin_parity,
+)
 
-ALL_RULES: tuple[Rule, ...] = (spin_parity.RULE,)
+ALL_RULES: tuple[Rule, ...] = (
+    # electron books
+    spin_parity.RULE,
+    # geometry
+    close_contact.RULE,
+    length_unit.RULE,
+    isolated_atom.RULE,
+    periodic_cell.RULE,
+    # not of chemistry
+    deck_unreadable.RULE,
+    rule_failed.RULE,
+    acceptance_lapsed.RULE,
+)
