@@ -1,8 +1,8 @@
 """Classes of the operations of a point group: which there are, in what order they stand, what they are called.
 
 Two operations are of one class where another operation of the group turns one into the other. Names are those of
-character tables; powers are written ``C5^2``. C2' axes are those of the class that has one along x, σv planes those
-of the class that holds xz (in the D groups: that hold C2' axes), σd the others; in the cubic groups C2' and σd are
+character tables; powers are written ``C5^2``. C2' axes are those of the class that has one along x, σv planes
+those of the class of xz (in the D groups they hold C2' axes), σd the others; in the cubic groups C2' and σd are
 those that lie along no coordinate axis.
 
 Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., appendix IIA (from memory).
@@ -33,8 +33,8 @@ _POSITIVE = np.array([0.9, 1.0, 1.2])
 def class_of_operation(symbol: str) -> NDArray[np.int64]:
     """Return the number of the class (order,) that each operation of `standard_operations` belongs to.
 
-    Operations are of one class where another operation of the group turns one into the other. Classes are numbered
-    as they stand in a table: E, rotations, then what reflects; within these by falling order of the axis.
+    Classes are numbered as they stand in a table: E, rotations, then what reflects; within these by falling order
+    of the axis.
     """
     operations = standard_operations(symbol)
     conjugates = np.einsum("gij,hjk,glk->ghil", operations, operations, operations, optimize=True)
@@ -54,9 +54,7 @@ def _place_in_table(members: Matrices, has_inversion: bool, has_half_turns: bool
     turn, axis = _turn_and_axis(members[representative_of(members)])
     reflects = bool(np.linalg.det(members[0]) < 0)
     if reflects and has_inversion:
-        turn = (
-            turn + Fraction(1, 2)
-        ) % 1  # classes that reflect stand in the order of the rotations they come from
+        turn = (turn + Fraction(1, 2)) % 1  # such classes stand in the order of the rotations they come from
     across = (turn == Fraction(1, 2) or (reflects and turn == 0)) and abs(axis[2]) < 1 - SAME_OPERATION
     first = "y" if reflects and not has_half_turns else "x"
     comes_second = len(members) > 1 and not _along_any([_turn_and_axis(member)[1] for member in members], first)

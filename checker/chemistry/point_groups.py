@@ -1,9 +1,9 @@
 """The operations of every finite point group in its standard frame.
 
 A group is written as a product of two sets: a cyclic group about z times what turns or reflects it, or T times
-what makes O, Td and I of it. The frame is that of the project's vocabulary: principal axis along z, vertical plane xz,
-C2' along x; cubic groups with their twofold (T, Td, Th, I, Ih) or fourfold axes (O, Oh) along x, y, z and a
-threefold one along (1, 1, 1); a fivefold axis of I and Ih along (0, 1, golden ratio); the plane of Cs is xy.
+what makes O, Td and I of it. The frame is that of the project's vocabulary: principal axis along z, vertical
+plane xz, C2' along x; cubic groups with their twofold (T, Td, Th, I, Ih) or fourfold axes (O, Oh) along x, y, z
+and a threefold one along (1, 1, 1); a fivefold axis of I and Ih along (0, 1, golden ratio); the plane of Cs is xy.
 
 Provides `standard_operations`, `family_of`, `indices_of` and the matrices they are made of.
 
