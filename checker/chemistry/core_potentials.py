@@ -24,7 +24,7 @@ __all__ = [
     "f_electrons_in_core",
     "f_unpaired_in_core",
     "is_known_set",
-    "nearest_count",
+    "nearest_counts",
     "published_counts",
 ]
 
@@ -78,12 +78,16 @@ def published_counts(z: int) -> tuple[PublishedCount, ...]:
     return tuple(PublishedCount(*key, tuple(names[:_N_EXAMPLES])) for key, names in sorted(sets.items()))
 
 
-def nearest_count(z: int, replaced: int) -> PublishedCount | None:
-    """Return the published count nearest to a number; of two as near, the one with fewer f electrons inside."""
-    return min(
-        published_counts(z),
-        key=lambda count: (abs(count.electrons - replaced), count.f_electrons_in_core),
-        default=None,
+def nearest_counts(z: int, replaced: int) -> tuple[PublishedCount, ...]:
+    """Return the published counts, the nearest to a number first, each number of electrons once.
+
+    Of two as near, the one with fewer f electrons in the core comes first.
+    """
+    by_electrons = {count.electrons: count for count in reversed(published_counts(z))}
+    return tuple(
+        sorted(
+            by_electrons.values(), key=lambda count: (abs(count.electrons - replaced), count.f_electrons_in_core)
+        )
     )
 
 

@@ -8,7 +8,7 @@ from checker.chemistry.core_potentials import (
     f_unpaired,
     f_unpaired_in_core,
     is_known_set,
-    nearest_count,
+    nearest_counts,
     published_counts,
 )
 from checker.errors import NotDerivable
@@ -57,14 +57,19 @@ def test_counts_of_iodine_are_those_of_its_potentials() -> None:
 
 def test_hydrogen_has_none() -> None:
     assert published_counts(1) == ()
-    assert nearest_count(1, 2) is None
+    assert nearest_counts(1, 2) == ()
 
 
 @pytest.mark.parametrize(("replaced", "nearest"), [(27, 28), (30, 28), (45, 46), (54, 46), (0, 28)])
-def test_the_nearest_count_is_suggested(replaced: int, nearest: int) -> None:
-    found = nearest_count(IODINE, replaced)
-    assert found is not None
-    assert found.electrons == nearest
+def test_the_nearest_count_comes_first(replaced: int, nearest: int) -> None:
+    assert nearest_counts(IODINE, replaced)[0].electrons == nearest
+
+
+def test_each_number_of_electrons_comes_once_without_f_electrons_if_it_can() -> None:
+    """54 for Tb is [Xe] as well as 46 and 4f8."""
+    found = nearest_counts(TB, 54)
+    assert [count.electrons for count in found] == [54, 53, 55, 46, 28]
+    assert found[0].f_electrons_in_core == 0
 
 
 @pytest.mark.parametrize(
