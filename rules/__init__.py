@@ -3,8 +3,11 @@
 from checker.registry import Rule
 from rules import (
     acceptance_lapsed,
+    atom_ground_term,
     close_contact,
+    core_potential_count,
     deck_unreadable,
+    high_spin_default,
     isolated_atom,
     length_unit,
     periodic_cell,
@@ -15,6 +18,10 @@ from rules import (
 ALL_RULES: tuple[Rule, ...] = (
     # electron books
     spin_parity.RULE,
+    core_potential_count.RULE,
+    # shells
+    high_spin_default.RULE,
+    atom_ground_term.RULE,
     # geometry
     close_contact.RULE,
     length_unit.RULE,

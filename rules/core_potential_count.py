@@ -2,10 +2,10 @@
 
 The electrons replaced go into the books, so a miscount shifts parity and spin. A core as large as the nuclear
 charge leaves no atom. A count that no published potential of the element uses is doubted, with the nearest
-published one as the repair; odd counts belong to potentials that hold an open f shell in the core. Those take the f
-spin out of the books: for trivalent Gd with 53 replaced, 4f7 is in the core, its spin is no longer counted and the
-rest is a singlet, whereas 28 replaced leaves 4f7 to be counted. Not judged where a named potential is not in the
-table and `core_potential.replaced` says nothing. The names and counts are those of
+published one as the repair; odd counts belong to potentials that hold an open f shell in the core. Those take the
+f spin out of the books: for trivalent Gd with 53 replaced, 4f7 is in the core, its spin is no longer counted and
+the rest is a singlet, whereas 28 replaced leaves 4f7 to be counted. Not judged where a named potential is not in
+the table and `core_potential.replaced` says nothing. The names and counts are those of
 checker/tables/core_potentials.csv.
 
 Passes: I, replaced 28 or 46.

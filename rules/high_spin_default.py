@@ -2,8 +2,8 @@
 
 A multiplicity that is not thought about comes out as 1 for an even and 2 for an odd number of electrons. For most
 closed-valence molecules that is right, for most free atoms with an open shell it is not. Free atoms and ions are
-judged here, by their known levels; what spin the ground state of a molecule has is not worked out, so molecules are
-not judged. Silent where another state is meant (`treatment.intent` is excited or broken-symmetry).
+judged here, by their known levels; what spin the ground state of a molecule has is not worked out, so molecules
+are not judged. Silent where another state is meant (`treatment.intent` is excited or broken-symmetry).
 
 Passes: Mg, charge 0, multiplicity 1 (3s2 1S0 is a singlet).
 Speaks: Fe, charge 0, multiplicity 1 (3d6 4s2 5D4 is a quintet).
