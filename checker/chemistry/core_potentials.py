@@ -74,8 +74,8 @@ def published_counts(z: int) -> tuple[PublishedCount, ...]:
         electrons = row.replaced.get(z, 0)
         if electrons:
             n_f = 0 if row.below_open_f is None else electrons - row.below_open_f
-            sets[electrons, n_f].append(row.names[0])
-    return tuple(PublishedCount(*key, tuple(names[:_N_EXAMPLES])) for key, names in sorted(sets.items()))
+            sets[electrons, n_f] += row.names
+    return tuple(PublishedCount(*key, _examples(names)) for key, names in sorted(sets.items()))
 
 
 def nearest_counts(z: int, replaced: int) -> tuple[PublishedCount, ...]:
@@ -140,6 +140,12 @@ def f_electrons_in_core(z: int, replaced: int, set_name: str | None = None) -> i
 def f_unpaired_in_core(z: int, replaced: int, set_name: str | None = None) -> int:
     """Return the unpaired f electrons that such a potential takes out of the books; see `f_electrons_in_core`."""
     return f_unpaired(f_electrons_in_core(z, replaced, set_name))
+
+
+def _examples(names: list[str]) -> tuple[str, ...]:
+    """Return the potentials' own names before those of basis sets, short ones first."""
+    ranked = sorted(set(names), key=lambda name: ("ecp" not in name.casefold(), len(name), name))
+    return tuple(ranked[:_N_EXAMPLES])
 
 
 @cache
