@@ -1,6 +1,7 @@
 """The deck as a frozen record. It judges form only: a chemically wrong value must reach a rule."""
 
 import datetime
+from collections.abc import Mapping
 from types import MappingProxyType
 from typing import Annotated, Any, Literal
 
@@ -9,10 +10,13 @@ from pydantic import (
     BaseModel,
     BeforeValidator,
     ConfigDict,
+    Discriminator,
     Field,
     PlainSerializer,
+    Tag,
     model_validator,
 )
+from pydantic_core import PydanticCustomError
 
 from checker.elements import number_of, symbol_of
 from checker.geometry import Geometry
@@ -21,7 +25,7 @@ DECK_VERSION = 1
 LARGEST_INTEGER = 2**63 - 1
 
 Whole = Annotated[int, Field(strict=True, ge=-LARGEST_INTEGER - 1, le=LARGEST_INTEGER)]
-Real = Annotated[float, Field(strict=True, allow_inf_nan=False)]
+NotNegative = Annotated[float, Field(strict=True, ge=0, allow_inf_nan=False)]
 Text = Annotated[str, Field(strict=True)]
 
 
@@ -34,10 +38,8 @@ def _by_symbol(mapping: dict[str, Any]) -> MappingProxyType[str, Any]:
     by_symbol: dict[str, Any] = {}
     for name, value in mapping.items():
         z = number_of(name)
-        if z is None:
-            raise ValueError(f"{name!r} is no element symbol")
-        if symbol_of(z) in by_symbol:
-            raise ValueError(f"the element {symbol_of(z)} is named twice")
+        if z is None or symbol_of(z) in by_symbol:
+            raise PydanticCustomError("no_element", "a name is no element, or one that is named before")
         by_symbol[symbol_of(z)] = value
     return _frozen(by_symbol)
 
@@ -48,16 +50,34 @@ def _date(value: object) -> object:
         try:
             return datetime.date.fromisoformat(value)
         except ValueError:
-            raise ValueError(f"{value!r} is not a date written as 2027-06-30") from None
+            raise PydanticCustomError("date_type", "no date") from None
     if isinstance(value, datetime.datetime):
         return value.date()
     return value
 
 
+def _whole(value: object) -> object:
+    """Refuse true and 1.0, which a literal 1 would let pass as they are equal to it."""
+    if type(value) is not int:
+        raise PydanticCustomError("literal_error", "no whole number", {"expected": str(DECK_VERSION)})
+    return value
+
+
+def _number_or_table(value: object) -> str:
+    return _AS_TABLE if isinstance(value, Mapping) else _AS_NUMBER
+
+
+# names of the branches of a choice; they show in pydantic's error paths and nowhere else
+_AS_NUMBER, _AS_TABLE = "as a number", "as a table"
+UNION_TAGS = (_AS_NUMBER, _AS_TABLE)
+
 _as_dict = PlainSerializer(dict, return_type=dict)
 CountByIrrep = Annotated[dict[Text, Whole], AfterValidator(_frozen), _as_dict]
 CountByElement = Annotated[dict[Text, Whole], AfterValidator(_by_symbol), _as_dict]
 TextByElement = Annotated[dict[Text, Text], AfterValidator(_by_symbol), _as_dict]
+WholeOrByIrrep = Annotated[
+    Annotated[Whole, Tag(_AS_NUMBER)] | Annotated[CountByIrrep, Tag(_AS_TABLE)], Discriminator(_number_or_table)
+]
 AtomNumbers = Annotated[tuple[Whole, ...], BeforeValidator(lambda v: tuple(v) if isinstance(v, list) else v)]
 
 
@@ -109,7 +129,7 @@ class Treatment(Table):
     spin_treatment: Literal["restricted", "restricted-open", "unrestricted"] | None = None
     method: Text | None = None
     hamiltonian: Literal["nonrelativistic", "x2c", "dkh", "zora", "four-component"] | None = None
-    frozen_orbitals: Whole | CountByIrrep | None = None
+    frozen_orbitals: WholeOrByIrrep | None = None
     state_irrep: Text | None = None
     roots: CountByIrrep | None = None
     intent: Literal["ground", "excited", "broken-symmetry", "vertical"] | None = None
@@ -120,7 +140,7 @@ class ActiveSpace(Table):
     """Electrons and orbitals of a multiconfiguration treatment."""
 
     electrons: Whole
-    orbitals: Whole | CountByIrrep
+    orbitals: WholeOrByIrrep
 
 
 class Basis(Table):
@@ -157,9 +177,9 @@ class Fragment(Table):
 class Resources(Table):
     """What the whole job may use."""
 
-    memory_gb: Annotated[float, Field(ge=0, allow_inf_nan=False)] | None = None
+    memory_gb: NotNegative | None = None
     cores: Whole | None = None
-    hours: Annotated[float, Field(ge=0, allow_inf_nan=False)] | None = None
+    hours: NotNegative | None = None
 
 
 class Acceptance(Table):
@@ -168,13 +188,13 @@ class Acceptance(Table):
     rule: Text
     reason: Annotated[Text, Field(min_length=1)]
     finding: Text | None = None
-    until: Annotated[datetime.date, BeforeValidator(_date)] | None = None
+    until: Annotated[datetime.date, Field(strict=True), BeforeValidator(_date)] | None = None
 
 
 class Job(Table):
     """A whole deck."""
 
-    deck_version: Literal[1]
+    deck_version: Annotated[Literal[1], BeforeValidator(_whole)]
     title: Text | None = None
     species: Species
     symmetry: Symmetry = Symmetry()
