@@ -22,6 +22,8 @@ if TYPE_CHECKING:
     from checker.chemistry.configurations import GroundLevel
     from checker.chemistry.contacts import LengthSlip, Nearest
     from checker.chemistry.irreps import PointGroup
+    from checker.chemistry.parity import Cause
+    from checker.chemistry.valence import Valence
 
 UNSTATED_MULTIPLICITY = "the deck states no multiplicity"
 
@@ -190,6 +192,48 @@ class Facts:
         from checker.chemistry.contacts import length_slip
 
         return None if self.nearest is None else length_slip(self.real_numbers, self.nearest)
+
+    @cached_property
+    def is_periodic(self) -> bool:
+        """Whether the geometry is a piece of a crystal, whose bonds end at the faces of the cell."""
+        atoms = self.job.species.atoms
+        return any(atoms.periodic or ()) or (atoms.lattice is not None and atoms.periodic is None)
+
+    @cached_property
+    def valence(self) -> "Valence":
+        """Bonds, open valences and implied charge of the real atoms; not derivable where they are no molecule."""
+        from checker.chemistry.valence import assign_valences
+
+        if self.is_periodic:
+            raise NotDerivable("bonds end at the faces of the cell")
+        if self.length_slip is not None:
+            raise NotDerivable("the lengths seem to be in another unit than stated, so bonds cannot be told")
+        return assign_valences(self.real_numbers, self.real_coordinates, numbering=self.real_indices + 1)
+
+    @cached_property
+    def parity_fails(self) -> bool:
+        """Whether no state of the electrons has the stated multiplicity, because both are even or both odd."""
+        return self.n_electrons % 2 == self.stated_multiplicity % 2
+
+    @cached_property
+    def parity_causes(self) -> "tuple[Cause, ...]":
+        """The slips that may explain a failed parity, likeliest first; empty where parity holds."""
+        from checker.chemistry.core_potentials import published_counts
+        from checker.chemistry.parity import rank_causes
+
+        if not self.parity_fails:
+            return ()
+        replaced = self.replaced_per_atom
+        return rank_causes(
+            self.real_numbers,
+            self.real_coordinates,
+            self.charge,
+            self.stated_multiplicity,
+            replaced=replaced,
+            published={z: tuple(count.electrons for count in published_counts(z)) for z in replaced},
+            valence=self.valence,
+            numbering=self.real_indices + 1,
+        )
 
     @cached_property
     def point_group(self) -> "PointGroup":

@@ -11,7 +11,7 @@ import math
 
 from checker.chemistry.bonding import Bonds
 from checker.chemistry.neighbours import Floats, Ints
-from checker.chemistry.pi_bonds import Edge, Pairing
+from checker.chemistry.pi_bonds import MOST_MULTIPLE_BONDS, Edge, Pairing
 from checker.chemistry.vacancy import LINEAR_SUM, bond_order, direction_sum, vacancy
 from checker.tables.structure import first_valences, is_covalent
 
@@ -27,11 +27,11 @@ PLANAR_SUM = 0.35
 HETERO_BONUS = 0.3
 """Among the atoms that could be left open, one with lone pairs is preferred by this much vacancy."""
 
-PNICTOGENS = frozenset({7, 15, 33, 51, 83})
-CHALCOGENS = frozenset({8, 16, 34, 52, 84})
-HALOGENS = frozenset({9, 17, 35, 53, 85})
-TETRELS = frozenset({6, 14, 32, 50, 82})
-TRIELS = frozenset({5, 13, 31, 49, 81})
+PNICTOGENS = frozenset({7, 15, 33, 51})
+CHALCOGENS = frozenset({8, 16, 34, 52})
+HALOGENS = frozenset({9, 17, 35, 53})
+TETRELS = frozenset({6, 14, 32, 50})
+TRIELS = frozenset({5, 13, 31, 49})
 SECOND_ROW = frozenset({5, 6, 7, 8, 9})
 _LONE_PAIRS = PNICTOGENS | CHALCOGENS | HALOGENS
 
@@ -72,9 +72,13 @@ class LewisStructure:
         """Return the vacancy of an atom (see `checker.chemistry.vacancy`)."""
         return vacancy(atom, self.numbers, self.coordinates, self.bonds)
 
+    def lopsided(self, atom: int) -> float:
+        """Return the length of the sum of the unit vectors to the neighbours: 0 for a regular centre."""
+        return math.hypot(*direction_sum(atom, self.coordinates, self.bonds))
+
     def is_planar(self, atom: int) -> bool:
         """Say whether the directions to three neighbours lie in a plane."""
-        return math.hypot(*direction_sum(atom, self.coordinates, self.bonds)) < PLANAR_SUM
+        return self.lopsided(atom) < PLANAR_SUM
 
     def _solve(self) -> None:
         short, long = self._unsaturated_bonds()
@@ -133,24 +137,38 @@ class LewisStructure:
         hetero = [taker for taker in takers if int(self.numbers[taker]) in _LONE_PAIRS]
         if not hetero:
             return len(takers) > 1 and takers.count(takers[0]) > 1 and len(self.bonds.neighbours[takers[0]]) == 1
-        if int(self.numbers[donor]) in SECOND_ROW:
-            return True
+        if int(self.numbers[donor]) in SECOND_ROW or any(
+            self.numbers[taker] != self.numbers[donor] for taker in takers
+        ):
+            return True  # a chain of one heavy element may be neutral or a dianion, and only its lengths tell
         return all(self.order(donor, taker) >= SHORT_ENOUGH_ORDER for taker in takers)
 
     def _donate(self, donor: int, takers: list[int]) -> None:
         """Open a slot at the donor and pair it, keeping one taker's slot for the negative charge."""
-        kept = max(takers, key=lambda taker: (int(self.numbers[taker]) in _LONE_PAIRS, taker))
-        self.pairing.left[kept] -= 1
         self.pairing.add_slot(donor)
-        known = set(self.pairing.partners(donor))
-        self.pairing.add_edges(
-            (donor, other) for other in self.bonds.neighbours[donor] if other in self._slots and other not in known
-        )
-        if self.pairing.extend_from(donor):
+        self.pairing.add_edges((donor, other) for other in self.bonds.neighbours[donor] if other in self._slots)
+        if self._pair_with_taker(donor, takers) or self._pair_elsewhere(donor, takers):
             self.donors.append(donor)
         else:
             self.pairing.left[donor] -= 1
-        self.pairing.left[kept] += 1
+
+    def _pair_with_taker(self, donor: int, takers: list[int]) -> bool:
+        """Pair the donor with the neediest atom beside it, carbon before others, if another slot stays open."""
+        free = [taker for taker in takers if self.pairing.between(donor, taker) < MOST_MULTIPLE_BONDS]
+        if len(takers) < 2 or not free:
+            return False
+        best = max(
+            free, key=lambda taker: (takers.count(taker), int(self.numbers[taker]) not in _LONE_PAIRS, -taker)
+        )
+        self.pairing.shift([donor, best])
+        return True
+
+    def _pair_elsewhere(self, donor: int, takers: list[int]) -> bool:
+        """Pair the donor along the multiple bonds with an open atom farther off, as in pyridine N-oxide."""
+        self.pairing.left[takers[0]] -= 1
+        found = self.pairing.extend_from(donor)
+        self.pairing.left[takers[0]] += 1
+        return found
 
     def _settle(self) -> None:
         """Move each open slot to the atom where lengths and angles say it is; mark stabilised cations."""
@@ -183,4 +201,4 @@ class LewisStructure:
 
     def is_linear(self, atom: int) -> bool:
         """Say whether an atom with two neighbours lies on the line between them."""
-        return math.hypot(*direction_sum(atom, self.coordinates, self.bonds)) < LINEAR_SUM
+        return self.lopsided(atom) < LINEAR_SUM

@@ -83,7 +83,8 @@ def rank_causes(
     *,
     replaced: Mapping[int, int] | None = None,
     published: Mapping[int, Sequence[int]] | None = None,
-    bonds: Bonds | None = None,
+    valence: Valence | None = None,
+    numbering: Ints | None = None,
 ) -> tuple[Cause, ...]:
     """Rank the slips that may have led to a multiplicity that the electrons do not allow.
 
@@ -94,7 +95,8 @@ def rank_causes(
     charge, multiplicity : as stated.
     replaced : electrons replaced per atom by a core potential, by atomic number.
     published : counts that published potentials use, by atomic number.
-    bonds : as found by `perceive_bonds`; found here if left out.
+    valence : as found by `assign_valences`; found here if left out.
+    numbering : (n,) the numbers that people know the atoms by; 1, 2, ... if left out.
 
     Returns
     -------
@@ -109,14 +111,13 @@ def rank_causes(
     cores = dict(replaced or {})
     if (_count_electrons(numbers, cores) - charge) % 2 != multiplicity % 2:
         return ()
-    bonds = bonds or perceive_bonds(numbers, coordinates)
+    bonds = valence.bonds if valence else perceive_bonds(numbers, coordinates)
     copies = _copies(numbers, bonds)
-    job = _Job(numbers, coordinates, charge, multiplicity, cores, published or {}, copies)
-    if copies:
-        kept = np.setdiff1d(np.arange(len(numbers)), copies)
-        job = replace(job, numbers=numbers[kept], coordinates=coordinates[kept], kept=kept)
-        bonds = perceive_bonds(job.numbers, job.coordinates)
-    valence = assign_valences(job.numbers, job.coordinates, bonds)
+    kept = np.setdiff1d(np.arange(len(numbers)), copies)
+    known_by = np.arange(1, len(numbers) + 1) if numbering is None else numbering
+    if copies or valence is None:
+        valence = assign_valences(numbers[kept], coordinates[kept], None if copies else bonds)
+    job = _Job(numbers[kept], charge, multiplicity, cores, published or {}, copies, kept, known_by)
     return _normalised(job.causes(valence))
 
 
@@ -141,16 +142,16 @@ def _normalised(causes: Iterator[Cause]) -> tuple[Cause, ...]:
 
 @dataclass(frozen=True)
 class _Job:
-    """The job as stated, with copies of atoms taken out."""
+    """The job as stated, with copies of atoms taken out; `kept` are the indices of the atoms that stay."""
 
     numbers: Ints
-    coordinates: Floats
     charge: int
     multiplicity: int
     cores: Mapping[int, int]
     published: Mapping[int, Sequence[int]]
     copies: tuple[int, ...]
-    kept: Ints | None = None
+    kept: Ints
+    numbering: Ints
 
     def causes(self, valence: Valence) -> Iterator[Cause]:
         yield from self._doubled(valence)
@@ -169,17 +170,19 @@ class _Job:
         return _free_atom_weight(int(self.numbers[0]), charge, multiplicity)
 
     def _index(self, atom: int) -> int:
-        return atom if self.kept is None else int(self.kept[atom])
+        return int(self.kept[atom])
 
     def _label(self, atom: int) -> str:
-        return f"{name_of(int(self.numbers[atom]))} {self._index(atom) + 1}"
+        return f"{name_of(int(self.numbers[atom]))} {self.numbering[self._index(atom)]}"
 
     def _doubled(self, valence: Valence) -> Iterator[Cause]:
         """Blame the copies if taking them out changes the parity of the electrons."""
         if self._electrons() % 2 == self.multiplicity % 2:
             return
         every = dict.fromkeys(self.copies)
-        labels = ", ".join(str(atom + 1) for atom in list(every)[:6]) + (" ..." if len(every) > 6 else "")
+        labels = ", ".join(str(self.numbering[atom]) for atom in list(every)[:6]) + (
+            " ..." if len(every) > 6 else ""
+        )
         one = len(every) == 1
         reason = (
             f"atom {labels} lies on another of its element"
@@ -235,7 +238,7 @@ class _Job:
 
     def _cores(self, valence: Valence) -> Iterator[Cause]:
         for z, stated in self.cores.items():
-            if int(np.count_nonzero(self.numbers == z)) % 2 == 0:
+            if not stated or int(np.count_nonzero(self.numbers == z)) % 2 == 0:
                 continue
             known = tuple(self.published.get(z, ()))
             prior = PRIOR_CORE_PUBLISHED if stated in known or not known else PRIOR_CORE_UNPUBLISHED

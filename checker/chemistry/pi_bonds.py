@@ -41,7 +41,9 @@ class Pairing:
     def add_edges(self, edges: Iterable[Edge]) -> None:
         """Allow multiple bonds between these atoms; the likelier ones first."""
         for i, j in edges:
-            self._partners.setdefault(i, []).append(j)
+            if j in self._partners.setdefault(i, []):
+                continue
+            self._partners[i].append(j)
             self._partners.setdefault(j, []).append(i)
             self._edges.append((i, j))
 
@@ -49,10 +51,6 @@ class Pairing:
         """Open one more slot at an atom."""
         self.left[atom] = self.left.get(atom, 0) + 1
         self._partners.setdefault(atom, [])
-
-    def partners(self, atom: int) -> tuple[int, ...]:
-        """Return the atoms to which this one may form multiple bonds."""
-        return tuple(self._partners.get(atom, ()))
 
     def bonds_of(self, atom: int) -> int:
         """Return the number of multiple bonds at an atom, beyond its single bonds."""

@@ -64,24 +64,26 @@ def _closures(tally: Tally) -> Iterator[Way]:
         _radicals(tally.anions, -1, RADICAL_AT_LONE_PAIRS),
         _radicals(tally.cations, 1, RADICAL_AT_CATION),
         _radicals(tally.subvalent, 1, RADICAL_AT_METAL),
-        [
-            (
-                plus - minus,
-                flexible - plus - minus,
-                CARBON_ION ** (plus + minus) * RADICAL_AT_CARBON ** (flexible - plus - minus),
-            )
-            for plus in range(flexible + 1)
-            for minus in range(flexible - plus + 1)
-        ],
+        list(_either(flexible)),
     )
     for ways in product(*groups):
-        charges, opens, weights = zip(*ways, strict=True)
-        yield tally.base + sum(charges), sum(opens), math.prod(weights)
+        charge = tally.base + sum(way[0] for way in ways)
+        yield charge, sum(way[1] for way in ways), math.prod(way[2] for way in ways)
+
+
+def _either(sites: int) -> Iterator[Way]:
+    """Yield the ways to close sites that may become cations or anions, or to leave them open."""
+    for plus in range(sites + 1):
+        for minus in range(sites - plus + 1):
+            n_open = sites - plus - minus
+            yield plus - minus, n_open, float(CARBON_ION ** (plus + minus) * RADICAL_AT_CARBON**n_open)
 
 
 def _radicals(sites: int, charge: int, weight: float) -> list[Way]:
     """Return the ways to leave some of these sites open; `charge` is what a closed one carries."""
-    return [(charge * (sites - n_open), n_open, weight**n_open) for n_open in range(min(sites, _MOST_OPEN) + 1)]
+    return [
+        (charge * (sites - n_open), n_open, float(weight**n_open)) for n_open in range(min(sites, _MOST_OPEN) + 1)
+    ]
 
 
 def _spin_weight(tally: Tally, unpaired: int, wanted: int) -> float:

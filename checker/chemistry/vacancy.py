@@ -82,7 +82,7 @@ def vacancy(atom: int, numbers: Ints, coordinates: Floats, bonds: Bonds) -> floa
     if not degree:
         return 1.0
     unused = min(1.2, max(0.0, unused_valence(atom, numbers, bonds)))
-    has_lone_pair = z not in {1, 5, 6, 13, 14, 31, 32, 49, 50, 81, 82}
+    has_lone_pair = z not in {1, 5, 6, 13, 14, 31, 32, 49, 50}
     if degree > 3 or (degree == 3 and has_lone_pair):
         return 0.0
     if has_lone_pair or degree == 1:

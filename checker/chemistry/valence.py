@@ -20,6 +20,9 @@ from checker.elements import name_of
 from checker.tables.structure import ion_charges, is_covalent, usual_valences, valence_electrons
 
 _TRIEL_ION = 3
+_FOURTH_ROW = 32
+_TRUE_METALS = frozenset({49, 50})
+_SEESAW_SUM = 0.6
 
 
 class Kind(enum.Enum):
@@ -107,7 +110,9 @@ class Valence:
         return bool((~known[self.lewis.numbers]).any())
 
 
-def assign_valences(numbers: Ints, coordinates: Floats, bonds: Bonds | None = None) -> Valence:
+def assign_valences(
+    numbers: Ints, coordinates: Floats, bonds: Bonds | None = None, *, numbering: Ints | None = None
+) -> Valence:
     """Find open valences and the charge that closed valences imply.
 
     Parameters
@@ -115,6 +120,7 @@ def assign_valences(numbers: Ints, coordinates: Floats, bonds: Bonds | None = No
     numbers : (n,) int array of atomic numbers, real atoms only.
     coordinates : (n, 3) float array, angstrom.
     bonds : as found by `perceive_bonds`; found here if left out.
+    numbering : (n,) the numbers that people know the atoms by; 1, 2, ... if left out.
 
     Raises
     ------
@@ -133,7 +139,7 @@ def assign_valences(numbers: Ints, coordinates: Floats, bonds: Bonds | None = No
     for site in sites:
         formal[site.atom] += site.charge
     tally = _tally(sites, _paired_triplets(lewis))
-    because = _why_ambiguous(lewis, sites)
+    because = _why_ambiguous(lewis, sites, np.arange(1, len(numbers) + 1) if numbering is None else numbering)
     implied = None if because else tally.lowest
     return Valence(lewis.bonds, lewis, open_valences, formal, sites, tally, implied, because)
 
@@ -168,11 +174,11 @@ def _paired_triplets(lewis: LewisStructure) -> int:
     )
 
 
-def _why_ambiguous(lewis: LewisStructure, sites: tuple[Site, ...]) -> str:
+def _why_ambiguous(lewis: LewisStructure, sites: tuple[Site, ...], number: Ints) -> str:
     """Return the reason why no single charge follows, or an empty string."""
     if lewis.bonds.overlaps:
         i, j, distance = lewis.bonds.overlaps[0]
-        return f"atoms {i + 1} and {j + 1} lie {distance:.2f} angstrom apart"
+        return f"atoms {number[i]} and {number[j]} lie {distance:.2f} angstrom apart"
     if lewis.gave_up:
         return "the multiple bonds could not be placed within the time allowed"
     reasons = {
@@ -184,9 +190,9 @@ def _why_ambiguous(lewis: LewisStructure, sites: tuple[Site, ...]) -> str:
     for kind, reason in reasons.items():
         for site in sites:
             if site.kind is kind:
-                return f"{name_of(int(lewis.numbers[site.atom]))} {site.atom + 1} {reason}"
+                return f"{name_of(int(lewis.numbers[site.atom]))} {number[site.atom]} {reason}"
     for i, j in lewis.stretched:
-        return f"the bond between atoms {i + 1} and {j + 1} is too long for the double bond it would have to be"
+        return f"the bond between atoms {number[i]} and {number[j]} is too long for the double bond it would be"
     return ""
 
 
@@ -257,14 +263,10 @@ class _Sites:
             return Kind.ANION
         if atom in self.bonds.contacts:
             return Kind.ANION
-        alone = len(self.bonds.neighbours[self.bonds.neighbours[atom][0]]) == 1
-        if (
-            z == 6
-            and self._degree(atom) == 1
-            and not (alone and self.numbers[self.bonds.neighbours[atom][0]] == 6)
-        ):
-            return Kind.ANION
-        return Kind.FLEXIBLE
+        other = self.bonds.neighbours[atom][0]
+        in_pair_of_two = self._degree(other) == 1 and int(self.numbers[other]) in TETRELS
+        is_bare_end = z in TETRELS and self._degree(atom) == 1 and not in_pair_of_two
+        return Kind.ANION if is_bare_end else Kind.FLEXIBLE
 
     def _in_nitrogen_oxide(self, atom: int) -> bool:
         """NO and linear NO2: nitrosyl and nitryl cations are as common as the anions."""
@@ -282,6 +284,8 @@ class _Sites:
         if z in HALOGENS or (beside_metal and z in {1} | PNICTOGENS | CHALCOGENS):
             for _ in range(slots):
                 self._add(atom, Kind.ANION, -1)
+        elif z in _TRUE_METALS and len(self.numbers) > 1:
+            self._add(atom, Kind.UNKNOWN, 0)
         elif z in TRIELS - {5} and len(self.numbers) > 1 and not beside_metal:
             self._add(atom, Kind.FIXED, _TRIEL_ION)
         elif slots == 1:
@@ -303,6 +307,9 @@ class _Sites:
 
     def _surplus_site(self, atom: int, surplus: int) -> None:
         z, degree = int(self.numbers[atom]), self._degree(atom)
+        if self._may_hide_a_lone_pair(atom, z, degree):
+            self._add(atom, Kind.UNKNOWN, 0)
+            return
         if _is_beyond(self.lewis, atom):
             cluster = z in TRIELS
             self._add(atom, Kind.UNKNOWN if cluster else Kind.BEYOND, 0 if cluster else surplus)
@@ -316,11 +323,21 @@ class _Sites:
             self._add(atom, Kind.FIXED, charge - 1)
             self._add(atom, Kind.FLEXIBLE, 0)
         else:
-            self._add(atom, Kind.FIXED, charge - 2 * self._is_polyhalide(atom, z, degree))
+            spare = self._is_polyhalide(atom, z, degree) or self._is_seesaw(atom, z, degree)
+            self._add(atom, Kind.FIXED, charge - 2 * spare)
 
     def _either_way(self, z: int, degree: int) -> bool:
         """Hypervalent centres with an odd electron to settle: SF5, BrF4 may be cation, anion or radical."""
         return (z in CHALCOGENS and degree == 5) or (z in HALOGENS and degree in {4, 6})
+
+    def _may_hide_a_lone_pair(self, atom: int, z: int, degree: int) -> bool:
+        """Doubt heavy centres that keep a lone pair unseen: SnCl4 2-, TeCl6 2-, SbCl6 3-, complexes of In+."""
+        heavy_halides = any(int(self.numbers[other]) in HALOGENS - {9} for other in self.bonds.neighbours[atom])
+        return z in _TRUE_METALS or (z >= _FOURTH_ROW and degree >= 5 and heavy_halides)
+
+    def _is_seesaw(self, atom: int, z: int, degree: int) -> bool:
+        """Tell a tetrahalide anion of phosphorus and its kin, a seesaw, from the tetrahedral cation."""
+        return z in PNICTOGENS - {7} and degree == 4 and self.lewis.lopsided(atom) > _SEESAW_SUM
 
     def _is_polyhalide(self, atom: int, z: int, degree: int) -> bool:
         """Tell a linear trihalide, whose middle has a lone pair more, from a bent halonium ion."""
