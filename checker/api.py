@@ -4,6 +4,7 @@ import datetime
 from collections.abc import Iterable, Iterator
 from functools import cache
 from pathlib import Path
+from typing import BinaryIO
 
 from checker import engine
 from checker.deck import Deck, UnreadableDeck
@@ -36,10 +37,17 @@ def check_text(
 
 
 def check_path(
-    *paths: str | Path, fill_in: FillIn | None = None, today: datetime.date | None = None
+    *paths: str | Path,
+    fill_in: FillIn | None = None,
+    today: datetime.date | None = None,
+    stdin: BinaryIO | None = None,
 ) -> Iterator[DeckReport]:
-    """Judge decks, XYZ files and folders of them, in the order given, one report after another."""
-    return _judged(read_paths([str(path) for path in paths], fill_in=fill_in or FillIn()), today)
+    """Judge decks, XYZ files and folders of them, in the order given, one report after another.
+
+    The path ``-`` stands for `stdin`, by default the standard input of the process.
+    """
+    decks = read_paths([str(path) for path in paths], fill_in=fill_in or FillIn(), stdin=stdin)
+    return _judged(decks, today)
 
 
 def _judged(decks: Iterable[Deck | UnreadableDeck], today: datetime.date | None) -> Iterator[DeckReport]:

@@ -79,8 +79,8 @@ def _finding(placed: PlacedFinding, report: DeckReport, page: Page) -> Iterator[
     sure = f", confidence {said.confidence:.2g}" if said.confidence < 1 else ""
     yield from page.entry("rule", f"{placed.rule}{sure}, finding {placed.fingerprint}")
     for n, repair in placed.numbered:
-        share = f" (likelihood {_percent(repair.weight)})" if len(placed.numbered) > 1 else ""
-        yield from page.entry(f"repair {n}", plain(repair.say) + share)
+        share = f"{_percent(repair.weight)} likely: " if len(placed.numbered) > 1 else ""
+        yield from page.entry(f"repair {n}", share + plain(repair.say))
         for line in deck_lines(repair, report):
             yield page.line(("", ""), (INDENT + line, "paste"))
 
@@ -100,8 +100,8 @@ def _complaints(placed: PlacedFinding, page: Page) -> Iterator[str]:
     assert isinstance(complaints, list)
     for complaint in complaints:
         assert isinstance(complaint, dict)
-        yield page.free((f"{_spot(complaint['file'], complaint['line'], complaint['column'])}: ", "name"))
-        yield from page.entry("", plain(str(complaint["message"])))
+        spot = _spot(complaint["file"], complaint["line"], complaint["column"])
+        yield from page.paragraph(f"{spot}: {plain(str(complaint['message']))}")
 
 
 def _place(placed: PlacedFinding) -> str:

@@ -55,6 +55,15 @@ class Page:
         for rest in wrapped[1:]:
             yield self.line(("", ""), (rest, style))
 
+    def paragraph(self, text: str) -> Iterator[str]:
+        """Yield text from the left edge on, wrapped, its further lines in the column of text."""
+        indent = " " * (LABEL_WIDTH + len(GAP))
+        width = self._text_width + len(indent)
+        for line in textwrap.wrap(
+            text, width, subsequent_indent=indent, break_long_words=False, break_on_hyphens=False
+        ):
+            yield self.free((line, ""))
+
     def line(self, label: Segment, *segments: Segment) -> str:
         """Return one line: the label in its column, then the segments as they are."""
         padding = " " * (LABEL_WIDTH - len(label[0])) + GAP

@@ -1,0 +1,6 @@
+"""Entry of `python -m checker`."""
+
+from checker.cli import main
+
+if __name__ == "__main__":
+    main()

@@ -1,0 +1,87 @@
+"""What `hundsight explain` says: the page of a rule, the catalogue of rules, the schemas of deck and report."""
+
+import difflib
+import textwrap
+from importlib import resources
+
+from checker.errors import HundsightError
+from checker.findings import Grade
+from checker.registry import Rule, RuleSet
+
+SCHEMAS = ("deck", "report")
+LATER = ("recipe", "policy")
+GRADE_MEANINGS = {
+    Grade.HALT: "no such state exists, or the job cannot mean what the deck says",
+    Grade.DOUBT: "the state exists, but it is probably not the one meant, or the job will not do what is wanted",
+    Grade.NOTE: "worth knowing before spending the hours",
+}
+
+
+def page(name: str, rules: RuleSet, width: int) -> str:
+    """Return what there is to read under a name: a rule's manual page, or a JSON Schema.
+
+    Raises HundsightError, with the nearest name, where nothing has that name.
+    """
+    wanted = name.strip().lower().replace("_", "-")
+    if wanted in SCHEMAS:
+        return schema(wanted)
+    if wanted in LATER:
+        raise HundsightError(f"{wanted!r} is not explained in this version; there is {_listed(SCHEMAS)}")
+    if wanted in rules:
+        return _manual(rules.named(wanted), width)
+    nearest = difflib.get_close_matches(wanted, names(rules), n=1)
+    hint = f"the nearest is {nearest[0]}; " if nearest else ""
+    raise HundsightError(f"nothing is called {name!r}; {hint}hundsight explain lists all there is")
+
+
+def names(rules: RuleSet) -> list[str]:
+    """Return all that can be explained."""
+    return [*(rule.id for rule in rules), *SCHEMAS]
+
+
+def schema(name: str) -> str:
+    """Return the JSON Schema of "deck" or "report" as text."""
+    return resources.files("checker.report").joinpath(f"{name}.schema.json").read_text("utf-8")
+
+
+def catalogue(rules: RuleSet, width: int) -> str:
+    """Return all rules in reading order, with grade and title, wrapped to `width`."""
+    id_width = max((len(rule.id) for rule in rules), default=0)
+    lines = [
+        line
+        for rule in rules
+        for line in textwrap.wrap(
+            f"{rule.id:<{id_width}}  {rule.grade.word:<5}  {rule.title}",
+            max(width, id_width + 40),
+            subsequent_indent=" " * (id_width + 9),
+        )
+    ]
+    meanings = [f"{grade.word:<5}  {GRADE_MEANINGS[grade]}" for grade in sorted(Grade, reverse=True)]
+    closing = "hundsight explain RULE gives a rule's ground, a worked case and its source."
+    schemas = f"hundsight explain {' and explain '.join(SCHEMAS)} print the JSON Schema of each."
+    return "\n".join([*lines, "", *meanings, "", closing, schemas]) + "\n"
+
+
+def _manual(rule: Rule, width: int) -> str:
+    paragraphs = rule.manual.split("\n\n")
+    wrapped = [_reflowed(paragraph, width) for paragraph in paragraphs]
+    grade = _reflowed(
+        f"Grade: {rule.grade.word}, unless a finding says otherwise: {GRADE_MEANINGS[rule.grade]}.", width
+    )
+    return "\n\n".join([*wrapped, grade]) + "\n"
+
+
+def _reflowed(paragraph: str, width: int) -> str:
+    """Wrap each line that is too long; shorter ones stay as their author broke them."""
+    return "\n".join(
+        part
+        for line in paragraph.splitlines()
+        for part in textwrap.wrap(
+            line, width, subsequent_indent="  ", break_long_words=False, replace_whitespace=False
+        )
+        or [""]
+    )
+
+
+def _listed(words: tuple[str, ...]) -> str:
+    return " and ".join(words)

@@ -1,0 +1,83 @@
+"""Where text goes: the terminal, a pipe or a file, and what each can show."""
+
+import os
+import shutil
+import sys
+from collections.abc import Iterable
+from pathlib import Path
+
+from checker.errors import HundsightError
+from checker.files import write_whole
+from checker.findings import Grade
+from checker.progress import Progress
+from checker.report import Look
+from checker.report.plain import plain
+
+PLAIN_WIDTH = 80
+
+
+def text_width() -> int:
+    """Return the width of the terminal; of a pipe what COLUMNS says, else 80."""
+    return shutil.get_terminal_size((PLAIN_WIDTH, 24)).columns
+
+
+def look_of_stdout(stop_at: Grade, *, quiet: bool) -> Look:
+    """Return what standard output can show."""
+    encoding = (getattr(sys.stdout, "encoding", None) or "utf-8").lower().replace("-", "")
+    return Look(
+        stop_at=stop_at,
+        width=text_width(),
+        colour=_wants_colour(),
+        symbols=encoding.startswith("utf"),
+        quiet=quiet,
+    )
+
+
+def look_of_file(stop_at: Grade, *, quiet: bool) -> Look:
+    """Return what a file can show: no colour, and the width that COLUMNS says, else 80."""
+    columns = os.environ.get("COLUMNS", "")
+    width = int(columns) if columns.isdecimal() and int(columns) else PLAIN_WIDTH
+    return Look(stop_at=stop_at, width=width, quiet=quiet)
+
+
+def progress(n_files: int, *, quiet: bool) -> Progress:
+    """Return the line of progress; it stays away unless standard error is a terminal that can take it back."""
+    shows = sys.stderr.isatty() and os.environ.get("TERM") != "dumb" and not quiet
+    return Progress(sys.stderr if shows else None, n_files)
+
+
+def to_stdout(pieces: Iterable[str], progress: Progress | None = None) -> None:
+    """Write pieces to standard output as they come; what its encoding lacks is written out as an escape."""
+    stream = sys.stdout
+    encoding = getattr(stream, "encoding", None) or "utf-8"
+    for piece in pieces:
+        if progress is not None:
+            progress.hide()
+        stream.write(piece if piece.isascii() else piece.encode(encoding, "backslashreplace").decode(encoding))
+    if progress is not None:
+        progress.hide()
+    stream.flush()
+
+
+def to_file(file: str, pieces: Iterable[str], progress: Progress | None = None) -> None:
+    """Write pieces to a file in UTF-8, whole or not at all; raise HundsightError if it cannot be written."""
+    try:
+        write_whole(Path(file), (piece.encode("utf-8", "backslashreplace") for piece in pieces))
+    except OSError as error:
+        reason = (error.strerror or str(error)).lower()
+        raise HundsightError(
+            f"--output {file}: {reason}; give a file in a folder that can be written to"
+        ) from None
+    finally:
+        if progress is not None:
+            progress.hide()
+
+
+def _wants_colour() -> bool:
+    """Tell whether colour is welcome: on a terminal, unless NO_COLOR (no-color.org) or TERM=dumb is set."""
+    return sys.stdout.isatty() and not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
+
+
+def to_stderr(sentence: str) -> None:
+    """Write one sentence about the call, not about a deck, to standard error."""
+    sys.stderr.write(f"{plain(sentence)}\n")
