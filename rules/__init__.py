@@ -5,23 +5,32 @@ from rules import (
     acceptance_lapsed,
     atom_ground_term,
     close_contact,
+    closed_shell_treatment,
     core_potential_count,
     deck_unreadable,
     high_spin_default,
     isolated_atom,
     length_unit,
+    occupation_irreps,
+    occupation_total,
     periodic_cell,
     rule_failed,
     spin_parity,
+    stated_twice,
 )
 
 ALL_RULES: tuple[Rule, ...] = (
     # electron books
     spin_parity.RULE,
     core_potential_count.RULE,
+    stated_twice.RULE,
     # shells
+    closed_shell_treatment.RULE,
     high_spin_default.RULE,
     atom_ground_term.RULE,
+    # occupations
+    occupation_irreps.RULE,
+    occupation_total.RULE,
     # geometry
     close_contact.RULE,
     length_unit.RULE,
