@@ -10,7 +10,7 @@ from checker.reading.frames import frames_of, numbered
 from checker.reading.xyz import BrokenFrame, Frame
 
 _NO_CHARGE = (
-    "the frame states no charge; write charge=0 (the total charge) on its comment line, or give --charge 0"
+    "the frame states no charge; write charge=0 (the total charge) on this comment line, or give --charge 0"
 )
 
 

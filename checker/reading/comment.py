@@ -1,4 +1,4 @@
-"""The comment line of an XYZ frame: words ``key=value`` in the manner of extended XYZ, prose between them ignored."""
+"""The comment line of an XYZ frame: words ``key=value`` as extended XYZ writes them, prose between ignored."""
 
 import math
 import re
@@ -59,7 +59,7 @@ def read_comment(line: str) -> Comment:
     for word in _WORD.finditer(line):
         key = (word["key"] or "").lower()
         if key in _READERS:
-            value = next(v for v in word.group("double", "single", "braces", "bare") if v is not None)
+            value = word[word.lastgroup or "bare"]
             comment.faults += _READERS[key](comment, key, value, word.start() + 1)
     return comment
 
@@ -85,17 +85,20 @@ def _no_integer(key: str, value: str) -> str:
 
 
 def _read_lattice(comment: Comment, _: str, value: str, column: int) -> Iterator[CommentFault]:
-    try:
-        numbers = tuple(real(part.encode()) for part in value.replace(",", " ").split())
-    except ValueError:
-        numbers = ()
-    if len(numbers) != 9 or not all(map(math.isfinite, numbers)):
-        message = (
-            f"Lattice on the comment line is {quoted(value)}, but must be nine numbers in quotes: three vectors"
-        )
+    comment.lattice = lattice_of(value)
+    if comment.lattice is None:
+        message = f"Lattice on the comment line is {quoted(value)}, but must be nine numbers in quotes"
         yield CommentFault(column, message)
-        return
-    comment.lattice = numbers
+
+
+@lru_cache(maxsize=256)  # the frames of one file mostly share a cell
+def lattice_of(written: str) -> tuple[float, ...] | None:
+    """Return the nine numbers of a cell, or None where they are not that."""
+    try:
+        numbers = tuple(real(part.encode()) for part in written.replace(",", " ").split())
+    except ValueError:
+        return None
+    return numbers if len(numbers) == 9 and all(map(math.isfinite, numbers)) else None
 
 
 def _read_periodic(comment: Comment, _: str, value: str, column: int) -> Iterator[CommentFault]:
@@ -110,8 +113,8 @@ def _read_periodic(comment: Comment, _: str, value: str, column: int) -> Iterato
 def _read_properties(comment: Comment, _: str, value: str, column: int) -> Iterator[CommentFault]:
     if layout_of(value) is None:
         message = (
-            f"Properties on the comment line is {quoted(value)}, but must name the columns, with species:S:1 or Z:I:1 "
-            f"and pos:R:3 among them, such as Properties={PLAIN}"
+            f"Properties on the comment line is {quoted(value)}, but must name the columns, with species:S:1 or "
+            f"Z:I:1 and pos:R:3 among them, such as Properties={PLAIN}"
         )
         yield CommentFault(column, message)
         return

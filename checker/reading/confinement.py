@@ -1,11 +1,12 @@
 """Keeps a deck from reading other people's files: which geometry files it may name.
 
 A path in a deck is relative to the deck. With all links resolved it must lie in the deck's own folder, or in the
-folder the call was made in, provided that the deck lies in there too and that it is not the home folder or the root.
+folder the call was made in, provided that the deck lies there too and that it is neither home folder nor root.
 What is refused is refused before it is looked at, so that the answer does not tell whether the file exists.
 """
 
-# ruff: noqa: PTH - paths stay text, as a Path would rewrite what was given and raise where os.path answers no
+# paths stay text here, as a Path would rewrite what was given and raise where os.path answers no
+# ruff: noqa: PTH109, PTH111, PTH116, PTH118, PTH120
 
 import os
 import re
@@ -119,8 +120,8 @@ def _confined(path: str, written: str, home: Home) -> str:
         return real
     raise _refusal(
         written,
-        "the path leads out of the folders that this deck may read from, its own and the one the check was called in; "
-        "copy the file beside the deck",
+        "the path leads out of the folders that this deck may read from, its own and the one the check was called "
+        "in; copy the file beside the deck",
     )
 
 

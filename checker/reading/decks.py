@@ -29,9 +29,7 @@ GEOMETRY = ("species", "geometry")
 CHARGE = ("species", "charge")
 NO_ATOMS = "species has neither atoms nor geometry; add rows of atoms, or the name of an XYZ file as geometry"
 BOTH = "species has both atoms and geometry; keep one of the two"
-NO_FOLDER = (
-    "the deck is a text without a folder, so its geometry file cannot be read; write the atoms into the deck"
-)
+NO_FOLDER = "the deck is a text without a folder, so no geometry file can be read; write the atoms into the deck"
 NO_CHARGE = (
     "neither the deck nor the comment line of its geometry file states a charge; add the total charge, such as "
     "charge = 0, to [species]"
@@ -39,7 +37,7 @@ NO_CHARGE = (
 
 
 def read_deck(
-    raw: bytes, kind: Kind, name: str, home: Home | None, fill_in: FillIn, guess: str = ""
+    raw: bytes, kind: Kind, name: str, *, home: Home | None, fill_in: FillIn, guess: str = ""
 ) -> Iterator[Deck | UnreadableDeck]:
     """Read a deck in TOML or JSON: one item, or one for each frame of its geometry file.
 

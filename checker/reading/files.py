@@ -1,6 +1,7 @@
 """Opens files, regular ones only, and says in a sentence why one cannot be read."""
 
-# ruff: noqa: PTH - paths stay text, as a Path would rewrite what was given and raise where os.path answers no
+# paths stay text here, as a Path would rewrite what was given and raise where os.path answers no
+# ruff: noqa: PTH114, PTH116
 
 import errno
 import os

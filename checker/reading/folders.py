@@ -1,6 +1,7 @@
 """Which files of a folder are decks."""
 
-# ruff: noqa: PTH - paths stay text, as a Path would rewrite what was given and raise where os.path answers no
+# paths stay text here, as a Path would rewrite what was given and raise where os.path answers no
+# ruff: noqa: PTH114, PTH118, PTH120
 
 import os
 import tomllib
@@ -19,9 +20,7 @@ from checker.reading.places import DeckPlaces
 
 DECK_SUFFIXES = (".deck.toml", ".deck.json")
 NOT_LISTED = "this user has no right to list the folder, so the decks in it were not read"
-LINK_LEADS_OUT = (
-    "this is a link that leads out of the folder, so it was not read; give the file itself to have it judged"
-)
+LINK_LEADS_OUT = "this link leads out of the folder, so it was not read; give the file itself to have it judged"
 
 
 @dataclass(frozen=True, slots=True)

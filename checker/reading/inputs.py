@@ -1,6 +1,7 @@
 """What was given on the command line, one after another: files, folders, standard input, texts."""
 
-# ruff: noqa: PTH - paths stay text, as a Path would rewrite what was given and raise where os.path answers no
+# paths stay text here, as a Path would rewrite what was given and raise where os.path answers no
+# ruff: noqa: PTH112, PTH113, PTH118
 
 import os
 import sys
@@ -29,7 +30,7 @@ _NO_DECK = (
 )
 _NO_INPUT = "standard input is closed, so there is no deck to read; give a path"
 _TAKEN_FOR_TOML = (
-    "; the input was taken for a TOML deck, as {why} and it begins neither with {{ nor with a number of atoms"
+    "; taken for a TOML deck, as {why} and the text begins neither with {{ nor with a number of atoms"
 )
 
 
@@ -123,7 +124,8 @@ def _read_stream(
         if looks is Kind.XYZ:
             yield from read_bare(chain([head] if head else [], chunks(stream)), name, fill_in)
         else:
-            yield from read_deck(raw, looks, name, home, fill_in, "" if kind else _why_toml(looks, name))
+            guess = "" if kind else _why_toml(looks, name)
+            yield from read_deck(raw, looks, name, home=home, fill_in=fill_in, guess=guess)
 
 
 def _why_toml(looks: Kind, name: str) -> str:

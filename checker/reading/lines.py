@@ -5,7 +5,7 @@ from collections.abc import Iterator
 from checker.reading.decoding import NUL_BYTE
 from checker.reading.limits import MAX_LINE_BYTES
 
-TOO_LONG = f"the line is longer than {MAX_LINE_BYTES // 1024} KiB, the most that is read of one; an XYZ file has an atom a line"
+TOO_LONG = f"the line is longer than {MAX_LINE_BYTES // 1024} KiB, the most that is read of one"
 
 
 class BadLine(Exception):

@@ -24,8 +24,8 @@ _TWICE = ("Cannot overwrite", "Cannot declare", "Duplicate inline", "Cannot muta
 
 # what tomllib says, and what that means for the author of a deck
 _TOML_SENTENCES = {
-    "Invalid statement": "no key, table or comment can begin like this; a line reads key = value, [table] or # comment",
-    "Expected newline": "something follows the value on its line; each key needs a line of its own, and text quotes",
+    "Invalid statement": "no line of a deck begins like this; write key = value, [table] or # comment",
+    "Expected newline": "something follows the value; each key needs a line of its own, and text needs quotes",
     "Expected '='": "a key stands here without = and a value; write key = value, or # before a comment",
     "Expected ']'": "a table header is not closed; write [table]",
     "Expected ']]'": "a table header is not closed; write [[table]]",
@@ -33,7 +33,7 @@ _TOML_SENTENCES = {
     "letters, digits, - and _ in quotes",
     "Unclosed array": "a list is not closed here; put a comma between its items and ] at its end",
     "Unclosed inline table": "a table in braces is not closed here; put a comma between its keys and } at its end",
-    "Unescaped '\\'": "a backslash in double quotes begins an escape that does not exist; put the text in single quotes",
+    "Unescaped '\\'": "a backslash in double quotes begins no known escape; put the text in single quotes",
     "Invalid hex value": "an escape in this text lacks hexadecimal digits; put the text in single quotes",
     "Escaped character": "an escape in this text names no character; put the text in single quotes",
     "Unterminated string": "a text in quotes is not closed; put the same quote at its end",

@@ -145,10 +145,10 @@ def _parse(source: bytes, kind: Kind) -> "Node":
     from tree_sitter import Language, Parser
 
     if kind is Kind.TOML:
-        import tree_sitter_toml as grammar
+        from tree_sitter_toml import language
     else:
-        import tree_sitter_json as grammar
-    return Parser(Language(grammar.language())).parse(source).root_node
+        from tree_sitter_json import language
+    return Parser(Language(language())).parse(source).root_node
 
 
 def _item(entry: Entry, index: int) -> Entry | None:

@@ -49,7 +49,7 @@ class DeckPlaces:
         return self.span(self._outline.find(path).entry.at)
 
     def value_range(self, key: str) -> tuple[int, int] | None:
-        """Return first and last + 1 character of the value of `key` in `text`; None if it has no text of its own."""
+        """Return where the value of `key` begins and ends in `text`; None if it has no text of its own."""
         found = self._outline.find(path_of(key))
         if not found.whole or found.entry.value is None:
             return None

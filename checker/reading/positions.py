@@ -29,10 +29,6 @@ class LineTable:
 
 
 def place_in(text: str, offset: int) -> tuple[int, int]:
-    """Return line and column, from 1, of a character offset.
-
-    >>> place_in("a\\r\\nbc", 4)
-    (2, 2)
-    """
+    """Return line and column, from 1, of a character offset."""
     before = text[:offset].replace("\r\n", "\n").replace("\r", "\n")
-    return before.count("\n") + 1, offset - (max(text.rfind("\n", 0, offset), text.rfind("\r", 0, offset)) + 1) + 1
+    return before.count("\n") + 1, len(before) - before.rfind("\n")

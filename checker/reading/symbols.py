@@ -53,20 +53,22 @@ def sentence_on_symbol(written: str, *, in_table: bool = False) -> str:
     said = quoted(written)
     stand_in = _STAND_IN.match(written)
     if stand_in:
-        return f"{said} is no element; write the element whose basis functions it carries, and its number in ghost_atoms"
+        return f"{said} is no element; {_GHOST}"
     isotope = _ISOTOPE.match(written)
     if isotope and number_of(isotope[1]):
         return f"{said} names an isotope; write {_proper(isotope[1])}, as only D and T are known by mass"
     label = _LABEL.match(written)
     if label and number_of(label[1]):
         proper = _proper(label[1])
-        return f"{said} is the element {proper} with a label or charge; write {proper} alone{'' if in_table else _LABELS}"
+        why = "" if in_table else _LABELS
+        return f"{said} is the element {proper} with a label or charge; write {proper} alone{why}"
     meant = _meant(written)
     if meant:
         return f"{said} is no element; the nearest is {meant}"
     return f"{said} is no element; write its symbol{'' if in_table else ' or its atomic number'}"
 
 
+_GHOST = "write the element whose basis functions it carries, and its number in ghost_atoms"
 _LABELS = ", as atoms are numbered in the order they stand and the charge is said in species.charge"
 
 
@@ -74,10 +76,7 @@ def sentence_on_number(z: int) -> str:
     """Return the complaint about an atomic number out of range."""
     shown = z if abs(z) < 10**6 else "that large number"
     if z == 0:
-        return (
-            "no element has the atomic number 0; write the element whose basis functions it carries, and its number "
-            "in ghost_atoms"
-        )
+        return f"no element has the atomic number 0; {_GHOST}"
     return f"no element has the atomic number {shown}; they run from 1 to {MAX_ATOMIC_NUMBER}"
 
 

@@ -1,4 +1,4 @@
-"""Turns of phrase that the complaints share. Whatever is quoted is shortened and stripped of control characters."""
+"""Turns of phrase that the complaints share. Whatever is quoted is shortened and made printable."""
 
 import datetime
 import difflib
@@ -12,8 +12,8 @@ LARGEST_SHOWN_INTEGER = 10**18
 def quoted(text: str) -> str:
     """Return a text in single quotes, shortened, with control characters written as escapes.
 
-    >>> quoted("a\\tb"), quoted("x" * 50)
-    ("'a\\\\tb'", "'xxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxx...'")
+    >>> quoted("Fe2+"), quoted("x" * 50)
+    ("'Fe2+'", "'xxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxx...'")
     """
     short = text if len(text) <= LONGEST_QUOTE else text[: LONGEST_QUOTE - 1] + "..."
     return "'" + printable(short) + "'"

@@ -3,8 +3,7 @@
 import math
 import re
 from collections.abc import Sequence
-from functools import cache, lru_cache
-from itertools import repeat
+from functools import lru_cache
 from typing import NamedTuple
 
 import numpy as np
@@ -92,7 +91,7 @@ def _rows(found: Sequence[Nuclide], coordinates: NDArray[np.float64], rows: list
         numbers=np.array(numbers, dtype=np.int64),
         mass_numbers=np.array(mass_numbers, dtype=np.int64),
         coordinates=coordinates,
-        columns=np.fromiter(map(_column, rows, repeat(layout.element)), dtype=np.int32, count=len(rows)),
+        columns=np.array(_columns(rows, layout.element), dtype=np.int32),
     )
 
 
@@ -114,21 +113,13 @@ def _read_one_by_one(rows: list[bytes], layout: Layout) -> Rows:
     return _rows([atom.nuclide for atom in atoms], np.array([atom.xyz for atom in atoms]), rows[:n], layout)
 
 
-def column_of_element(row: bytes, layout: Layout) -> int:
-    """Return the column, from 1 and in characters, where the element of a row begins."""
-    return _column(row, layout.element)
-
-
-def _column(row: bytes, element: int) -> int:
+def _columns(rows: list[bytes], element: int) -> list[int]:
+    """Return the column, from 1 and in characters, where the element of each row begins."""
     if not element:
-        return len(row) - len(row.lstrip()) + 1
-    before = _columns_before(element).match(row)
-    return len(row[: before.end() if before else 0].decode("utf-8", "replace")) + 1
-
-
-@cache
-def _columns_before(n: int) -> re.Pattern[bytes]:
-    return re.compile(rb"\s*(?:\S+\s+){%d}" % n)
+        return [len(row) - len(row.lstrip()) + 1 for row in rows]
+    before = re.compile(rb"\s*(?:\S+\s+){%d}" % element)
+    ends = [found.end() if (found := before.match(row)) else 0 for row in rows]
+    return [len(row[:end].decode("utf-8", "replace")) + 1 for row, end in zip(rows, ends, strict=True)]
 
 
 @lru_cache(maxsize=4096)
