@@ -117,13 +117,27 @@ def character_table(symbol: str) -> CharacterTable:
 
 @cache
 def sample(symbol: str) -> Sample:
-    """Return operations of a group with the weights that make an average over it."""
+    """Return operations of a group with the weights that make an average over it; E is the first."""
     group = known_group(symbol)
     if group.order is None:
-        operations, weights = _continuous_sample(group.symbol)
-    else:
-        operations = standard_operations(group.symbol)
-        weights = np.full(group.order, 1.0 / group.order)
+        return _weighted(group, *_continuous_sample(group.symbol))
+    return sample_over(group.symbol, standard_operations(group.symbol))
+
+
+def sample_over(symbol: str, operations: Matrices) -> Sample:
+    """Return the sample made of all operations (order, 3, 3) of a finite group, in its frame and in any order.
+
+    Raises ValueError where they are not as many as the group has.
+    """
+    group = known_group(symbol)
+    if len(operations) != group.order:
+        raise ValueError(
+            f"{group.symbol} has {group.order or 'infinitely many'} operations, not {len(operations)}"
+        )
+    return _weighted(group, np.asarray(operations), np.full(group.order, 1.0 / group.order))
+
+
+def _weighted(group: PointGroup, operations: Matrices, weights: Reals) -> Sample:
     characters = characters_at(group.symbol, operations)
     norms = np.array([2.0 if irrep.complex_pair else 1.0 for irrep in group.irreps])
     for array in (weights, characters, norms):
