@@ -1,14 +1,12 @@
 """Rebuild checker/tables/basis_sets.csv. Run by hand, a minute: ``python tests/rebuild/basis_sets.py``.
 
-Takes every set of the catalogue that the library `basis_set_exchange` ships, in its latest version: for each element
-the primitive and the contracted functions by angular momentum. A combined shell (sp) counts in each of its angular
-momenta, a general contraction with each of its columns. Sets of one content and role that are each other's second
-name share a row. The electrons replaced by core potentials stand in core_potentials.csv and are not repeated here.
+Takes every set of the catalogue that the library `basis_set_exchange` ships, in its latest version: for each
+element the primitive and the contracted functions by angular momentum. A combined shell (sp) counts in each of its
+angular momenta, a general contraction with each of its columns. Sets of one content and role that are each other's
+second name share a row. The electrons replaced by core potentials stand in core_potentials.csv, not here.
 The test `tests/outside/test_basis_sets.py` compares the shipped table with the installed catalogue again.
 """
 
-import csv
-import io
 from collections import Counter, defaultdict
 from pathlib import Path
 from typing import Any
@@ -19,8 +17,9 @@ TABLE = Path(__file__).parents[2] / "checker" / "tables" / "basis_sets.csv"
 HEADER = """\
 # Shells of basis sets; edition 1, 2026-12-01; unit: functions per atom, radial parts only (one p shell is 1p).
 # From the catalogue of the library basis_set_exchange {version}. Rebuilt by tests/rebuild/basis_sets.py.
+# Columns are divided by |; several names of one set by a semicolon and a space.
 # cartesian: angular momenta for which the set is made for cartesian functions; spherical for the others.
-# contents: ATOMIC_NUMBERS:PRIMITIVE/CONTRACTED, joined by a space; - where a set is a core potential only.
+# contents: ELEMENTS:PRIMITIVE/CONTRACTED by atomic number, 1+3-10 is 1 and 3 to 10; - is a core potential alone.
 """
 LETTERS = "spdfghiklm"
 POTENTIAL_ONLY = "potential"
@@ -52,14 +51,14 @@ def written(shells: list[Entry]) -> str:
 
 
 def ranges(numbers: list[int]) -> str:
-    """Write ascending numbers as 1,3-10."""
+    """Write ascending numbers as 1+3-10."""
     runs: list[list[int]] = []
     for number in numbers:
         if runs and runs[-1][1] == number - 1:
             runs[-1][1] = number
         else:
             runs.append([number, number])
-    return ",".join(str(a) if a == b else f"{a}-{b}" for a, b in runs)
+    return "+".join(str(a) if a == b else f"{a}-{b}" for a, b in runs)
 
 
 def contents(elements: dict[str, Entry]) -> str:
@@ -106,12 +105,8 @@ def rows() -> list[tuple[str, str, str, str]]:
 
 def table() -> str:
     """Return the whole file."""
-    out = io.StringIO()
-    out.write(HEADER.format(version=basis_set_exchange.version()))
-    writer = csv.writer(out, lineterminator="\n")
-    writer.writerow(["names", "role", "cartesian", "contents"])
-    writer.writerows(rows())
-    return out.getvalue()
+    lines = ["|".join(row) for row in (("names", "role", "cartesian", "contents"), *rows())]
+    return HEADER.format(version=basis_set_exchange.version()) + "\n".join(lines) + "\n"
 
 
 if __name__ == "__main__":
