@@ -70,7 +70,7 @@ class Facts:
     @cached_property
     def elements(self) -> tuple[int, ...]:
         """Atomic numbers of the real atoms that occur, ascending."""
-        return tuple(np.unique(self.real_numbers).tolist())
+        return tuple(np.flatnonzero(np.bincount(self.real_numbers)).tolist())  # np.unique would import numpy.ma
 
     def label(self, real_index: int) -> str:
         """Return how people name a real atom: symbol and its 1-based number in the deck, such as "O 3"."""

@@ -79,7 +79,7 @@ def _element_books(
     present = np.bincount(numbers[~is_ghost], minlength=1)
     ghosts = np.bincount(numbers[is_ghost], minlength=1)
     books = []
-    for z in np.unique(numbers).tolist():
+    for z in np.flatnonzero(np.bincount(numbers)).tolist():  # np.unique would import numpy.ma
         n_atoms = int(present[z]) if z < len(present) else 0
         n_ghosts = int(ghosts[z]) if z < len(ghosts) else 0
         replaced = None if replaced_per_atom is None else n_atoms * replaced_per_atom.get(z, 0)
