@@ -4,6 +4,7 @@ from checker.registry import Rule
 from rules import (
     acceptance_lapsed,
     atom_ground_term,
+    charge_structure,
     close_contact,
     closed_shell_treatment,
     core_potential_count,
@@ -13,16 +14,20 @@ from rules import (
     length_unit,
     occupation_irreps,
     occupation_total,
+    open_valence,
     periodic_cell,
     rule_failed,
     spin_parity,
     stated_twice,
+    unbound_electrons,
 )
 
 ALL_RULES: tuple[Rule, ...] = (
     # electron books
     spin_parity.RULE,
     core_potential_count.RULE,
+    charge_structure.RULE,
+    unbound_electrons.RULE,
     stated_twice.RULE,
     # shells
     closed_shell_treatment.RULE,
@@ -35,6 +40,7 @@ ALL_RULES: tuple[Rule, ...] = (
     close_contact.RULE,
     length_unit.RULE,
     isolated_atom.RULE,
+    open_valence.RULE,
     periodic_cell.RULE,
     # not of chemistry
     deck_unreadable.RULE,

@@ -66,7 +66,7 @@ def _add_hydrogen(facts: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
     unit = BOHR_ANGSTROM if facts.job.species.length_unit == "bohr" else 1.0
     row: list[Json] = ["H", *(round(value / unit, 4) for value in cause.position)]
     (atom,) = cause.atoms
-    return f"add the hydrogen lost at {facts.label(atom)}", (Edit(f"species.atoms[{len(facts.numbers)}]", row),)
+    return f"add a hydrogen to {facts.label(atom)}", (Edit(f"species.atoms[{len(facts.numbers)}]", row),)
 
 
 def _drop_hydrogen(facts: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:

@@ -23,7 +23,7 @@ from checker.elements import name_of, symbol_of
 from checker.errors import NotDerivable
 
 MOST_CAUSES = 8
-LEAST_SHARE = 0.004
+LEAST_SHARE = 0.01
 """Causes below this share of the weight are not worth a line."""
 
 PRIOR_MULTIPLICITY = 1.0
@@ -259,8 +259,12 @@ class _Job:
         if multiplicity == 1 and valence.implied_charge == self.charge:
             return "all valences are closed, which makes a singlet"
         if multiplicity == valence.tally.open + 1 and valence.lewis.open:
-            return f"{_places(self, valence)} unpaired electrons would be {multiplicity - 1}"
-        return f"{multiplicity - 1} unpaired electrons fit the electron count"
+            return f"{_places(self, valence)}, {_unpaired(multiplicity)}"
+        return (
+            f"{_unpaired(multiplicity)} fits the electron count"
+            if multiplicity == 2
+            else f"{_unpaired(multiplicity)} fit the electron count"
+        )
 
     def _why_charge(self, valence: Valence, charge: int) -> str:
         if valence.implied_charge == charge:
@@ -276,7 +280,12 @@ class _Job:
 def _places(job: _Job, valence: Valence) -> str:
     open_atoms = sorted(valence.lewis.open)[:3]
     names = ", ".join(job._label(atom) for atom in open_atoms)
-    return f"{names} {'has' if len(open_atoms) == 1 else 'have'} an open valence;"
+    return f"{names} {'has an open valence' if len(open_atoms) == 1 else 'have open valences'}"
+
+
+def _unpaired(multiplicity: int) -> str:
+    words = ("no unpaired electron", "one unpaired electron", "two unpaired electrons", "three unpaired electrons")
+    return words[multiplicity - 1] if multiplicity <= len(words) else f"{multiplicity - 1} unpaired electrons"
 
 
 def _free_atom_weight(z: int, charge: int, multiplicity: int) -> float:

@@ -1,7 +1,7 @@
-"""Tables behind bonds and valences, loaded on first use: bond radii, usual valences, charges of metal ions.
+"""Tables behind bonds and valences, loaded on first use: bond radii, usual valences, ion charges, unbound anions.
 
-Each is handed out as a tuple indexed by atomic number (entry 0 unused), so that an array of atomic numbers can
-look its values up in one step.
+Those by element are tuples or arrays indexed by atomic number (entry 0 unused), so that an array of atomic
+numbers can look its values up in one step.
 """
 
 import csv
@@ -71,6 +71,12 @@ def ion_charges() -> tuple[int, ...]:
     for row in _rows("ion_charges.csv"):
         table[int(row["number"])] = int(row["charge"])
     return tuple(table)
+
+
+@cache
+def attachment_energies() -> dict[str, float]:
+    """Return molecules that bind no extra electron: energy of the temporary anion in eV by Hill formula."""
+    return {row["formula"]: float(row["attachment_energy"]) for row in _rows("unbound_anions.csv")}
 
 
 @cache

@@ -1,0 +1,130 @@
+"""Whether a stated charge and multiplicity account for the open valences and the charge that bonds imply.
+
+Provides `unexplained_sites`, `beyond_valence`, `ChargeMismatch` and `charge_mismatch`.
+"""
+
+from dataclasses import dataclass
+
+from checker.chemistry.lewis import TETRELS
+from checker.chemistry.valence import Kind, Tally, Valence
+
+ROOM_OF_A_LOST_ATOM = 0.75
+"""Both ends of a bond of single length must have this much room before two lost hydrogens are suspected."""
+
+PI_BONDS_PER_PAIR = 4
+"""A conjugated system of this many multiple bonds may take up or give away two electrons (cyclooctatetraene)."""
+
+_OPEN_KINDS = (Kind.ANION, Kind.FLEXIBLE, Kind.CATION)
+
+
+@dataclass(frozen=True, slots=True)
+class Explanation:
+    """Atoms whose valence nothing explains; `why` is the ground, `confidence` 0 to 1."""
+
+    atoms: tuple[int, ...]
+    why: str
+    confidence: float
+    beyond: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class ChargeMismatch:
+    """A stated charge that the bonds do not imply.
+
+    `implied` is the charge of the closed valences, `from_bonding` whether open valences set it (or only ions and
+    onium centres do), `sites` the atoms that carry it, with their charge, `confidence` 0 to 1.
+    """
+
+    implied: int
+    from_bonding: bool
+    sites: tuple[tuple[int, int], ...]
+    confidence: float
+
+
+def beyond_valence(valence: Valence, charge: int) -> Explanation | None:
+    """Return atoms with more neighbours than any usual structure; CH5+ and its like pass by their charge."""
+    atoms = tuple(site.atom for site in valence.sites if site.kind is Kind.BEYOND)
+    if not atoms or (charge >= len(atoms) and all(valence.open_valences[atom] == -1 for atom in atoms)):
+        return None
+    return Explanation(
+        atoms, "Bonds are told from distances; a second-row atom holds four at most.", 0.8, beyond=True
+    )
+
+
+def unexplained_sites(valence: Valence, charge: int, multiplicity: int) -> Explanation | None:
+    """Return atoms short of a valence that charge and multiplicity (2S+1) do not explain, or None."""
+    tally = valence.tally
+    if tally.unknown or tally.beyond or tally.subvalent or valence.lewis.gave_up or valence.bonds.overlaps:
+        return None
+    if not _accounts_for(tally, charge, multiplicity - 1):
+        atoms = tuple(site.atom for site in valence.sites if site.kind in _OPEN_KINDS)
+        roomiest = sorted(set(atoms), key=lambda atom: (-valence.lewis.room(atom), atom))
+        why = "An open valence is an unpaired electron or a charge, and the stated ones do not suffice."
+        return Explanation(tuple(sorted(roomiest[: _short_by(tally, charge, multiplicity)])), why, 0.7)
+    if multiplicity == 1:
+        return _stripped_bond(valence)
+    return None
+
+
+def charge_mismatch(valence: Valence, charge: int) -> ChargeMismatch | None:
+    """Return how a stated charge differs from the implied one, or None where it is usual or can be explained.
+
+    One electron away is an ionised or attached state and passes, unless the electron would sit on a solvated metal
+    ion or a saturated onium ion. Call it only where `valence.implied_charge` is known.
+    """
+    implied = valence.implied_charge
+    assert implied is not None
+    electrons = implied - charge
+    if not electrons or (abs(electrons) == 1 and not (electrons == 1 and _holds_no_electron(valence))):
+        return None
+    if len(valence.lewis.pairing.bonds) >= PI_BONDS_PER_PAIR * (abs(electrons) // 2) > 0:
+        return None
+    sites = tuple((site.atom, site.charge) for site in valence.sites if site.charge)
+    from_bonding = bool(valence.tally.anions or valence.tally.cations)
+    return ChargeMismatch(implied, from_bonding, sites, 0.85 if abs(electrons) > 1 else 0.75)
+
+
+def _accounts_for(tally: Tally, charge: int, unpaired: int) -> bool:
+    """Try every number of sites closed as anions and as cations; one electron more or fewer is let pass."""
+    sites = tally.open
+    excess = charge - tally.base
+    for spare in (0, 1, -1):
+        for anions in range(min(tally.anions + tally.flexible, sites) + 1):
+            cations = excess - spare + anions
+            if not 0 <= cations <= tally.cations + tally.flexible or anions + cations > sites:
+                continue
+            left = sites - anions - cations
+            if unpaired in _reachable(left + abs(spare), tally.carbenes):
+                return True
+    return False
+
+
+def _reachable(n_open: int, carbenes: int) -> range:
+    """Unpaired electrons of that many open sites, all alike in spin, with carbenes as singlets or triplets."""
+    return range(n_open, n_open + 2 * carbenes + 1, 2)
+
+
+def _short_by(tally: Tally, charge: int, multiplicity: int) -> int:
+    """Open sites that neither the charge nor unpaired electrons use up; one at least."""
+    used = abs(charge - tally.base) + multiplicity - 1
+    return max(1, tally.anions + tally.flexible + tally.cations - used)
+
+
+def _stripped_bond(valence: Valence) -> Explanation | None:
+    """Two neighbours with room for a bond each, and only a bond of single length between them."""
+    for i, j in valence.lewis.stretched:
+        if min(valence.lewis.room(i), valence.lewis.room(j)) < ROOM_OF_A_LOST_ATOM:
+            continue
+        if not any(int(valence.lewis.numbers[atom]) in TETRELS for atom in (i, j)):
+            continue
+        length = valence.bonds.lengths[i][valence.bonds.neighbours[i].index(j)]
+        why = f"Their bond of {length:.2f} angstrom is a single bond, and both have an empty direction."
+        return Explanation((i, j), why, 0.7)
+    return None
+
+
+def _holds_no_electron(valence: Valence) -> bool:
+    """Say whether an added electron would have to sit on a metal ion among neutral ligands, or an onium centre."""
+    if valence.lewis.pairing.bonds or valence.tally.open or valence.tally.carbenes:
+        return False
+    return valence.tally.base > 0 and any(site.kind is Kind.FIXED and site.charge > 0 for site in valence.sites)
