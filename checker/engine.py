@@ -1,7 +1,6 @@
 """Runs rules over the facts of a deck and makes the report. It knows no rule and no output."""
 
 import datetime
-import hashlib
 import json
 from collections import Counter
 from collections.abc import Iterable, Iterator
@@ -91,6 +90,8 @@ def fingerprint(rule_id: str, finding: Finding, occurrence: int = 0) -> str:
     It depends on the rule, the key and what the finding is about (its subject, else the evidence without real
     numbers), not on where in the file it stands, on wording, or on the last digits of a distance.
     """
+    import hashlib
+
     matter = finding.subject or json.dumps(_without_reals(dict(finding.evidence)), sort_keys=True)
     text = json.dumps([rule_id, finding.at, matter, occurrence])
     return hashlib.sha256(text.encode()).hexdigest()[:FINGERPRINT_DIGITS]

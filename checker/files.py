@@ -2,7 +2,6 @@
 
 import os
 import stat
-import tempfile
 from collections.abc import Iterable
 from pathlib import Path
 
@@ -21,6 +20,8 @@ def write_whole(path: Path, pieces: Iterable[bytes]) -> None:
         with target.open("wb") as stream:
             stream.writelines(pieces)
         return
+    import tempfile
+
     handle, name = tempfile.mkstemp(prefix=f".{target.stem[:40]}.", suffix=target.suffix, dir=target.parent)
     temporary = Path(name)
     try:

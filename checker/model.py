@@ -82,9 +82,12 @@ AtomNumbers = Annotated[tuple[Whole, ...], BeforeValidator(lambda v: tuple(v) if
 
 
 class Table(BaseModel):
-    """What all tables of a deck share: frozen, and no key but the known ones."""
+    """What all tables of a deck share: frozen, and no key but the known ones.
 
-    model_config = ConfigDict(frozen=True, extra="forbid", arbitrary_types_allowed=True)
+    Validators are built when first asked for, as most tables are only ever read as a part of `Job`.
+    """
+
+    model_config = ConfigDict(frozen=True, extra="forbid", arbitrary_types_allowed=True, defer_build=True)
 
 
 class Species(Table):

@@ -3,7 +3,6 @@
 from collections.abc import Iterator
 
 from checker.findings import DeckReport, ElementBook, Expected, Grade, Json, Ledger, PlacedFinding, Verdict
-from checker.report.deck_lines import deck_lines
 from checker.report.layout import Page, grade_style, verdict_style
 from checker.report.plain import counted, evidence, grade_counts, plain, signed
 
@@ -81,6 +80,8 @@ def _finding(placed: PlacedFinding, report: DeckReport, page: Page) -> Iterator[
     for n, repair in placed.numbered:
         share = f"{_percent(repair.weight)} likely: " if len(placed.numbered) > 1 else ""
         yield from page.entry(f"repair {n}", share + plain(repair.say))
+        from checker.report.deck_lines import deck_lines
+
         for line in deck_lines(repair, report):
             yield page.line(("", ""), (INDENT + line, "paste"))
 
