@@ -41,9 +41,8 @@ HEXAGON = np.array([[np.cos(a), np.sin(a), 0.0] for a in np.pi / 3 * np.arange(6
         pytest.param("Oh", OCTAHEDRON, [[1, 0]] * 6, {"A1g": 1, "Eg": 1, "T1u": 1}, id="six_sigma_ligands"),
         pytest.param("Oh", np.zeros((1, 3)), [[0, 0, 1]], {"Eg": 1, "T2g": 1}, id="d_shell_in_octahedron"),
         pytest.param("Oh", np.zeros((1, 3)), [[0, 0, 0, 1]], {"A2u": 1, "T1u": 1, "T2u": 1}, id="f_shell"),
-        pytest.param("D6h", HEXAGON, [[0, 1]] * 6,
-                     {"A1g": 1, "A2g": 1, "B2u": 1, "B1u": 1, "E1u": 2, "E2g": 2, "A2u": 1, "B2g": 1, "E1g": 1,
-                      "E2u": 1}, id="benzene_p_shells"),
+        pytest.param("D6h", HEXAGON, [[0, 1]] * 6, {"A1g": 1, "A2g": 1, "B2g": 1, "E1g": 1, "E2g": 2,
+                     "A2u": 1, "B1u": 1, "B2u": 1, "E1u": 2, "E2u": 1}, id="benzene_p_shells"),
         pytest.param("Ih", ICOSAHEDRON, [[1, 0]] * 12, {"Ag": 1, "Hg": 1, "T1u": 1, "T2u": 1}, id="icosahedron_s"),
     ],
 )  # fmt: skip
