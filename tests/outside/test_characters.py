@@ -3,8 +3,8 @@
 Sources, all from memory: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed. (1990), appendix II (A:
 characters, B: correlations); S. L. Altmann & P. Herzig, Point-Group Theory Tables, 2nd ed. (2011); E. B. Wilson,
 J. C. Decius & P. C. Cross, Molecular Vibrations (1955), appendix X (products and correlations); G. Herzberg,
-Spectra of Diatomic Molecules (1950), ch. VI, and Electronic Spectra of Polyatomic Molecules (1966), appendix (linear
-molecules). The eight abelian groups also against the table that PySCF ships.
+Spectra of Diatomic Molecules (1950), ch. VI, and Electronic Spectra of Polyatomic Molecules (1966), appendix. The
+eight abelian groups also against the table that PySCF ships.
 """
 
 import itertools

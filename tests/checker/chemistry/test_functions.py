@@ -80,7 +80,7 @@ def test_the_full_group_descends_to_the_abelian_one(symbol: str, points: Points,
 
 
 def test_linear_molecules_count_by_axial_momentum_and_parity() -> None:
-    """Carbon monoxide and carbon dioxide in s and p shells, counted by hand; a cartesian d shell holds an s too."""
+    """Carbon monoxide and carbon dioxide in s and p shells, by hand; a cartesian d shell holds an s too."""
     assert levels_on_axis("C∞v", None, np.array([[3, 2], [3, 2]])) == {"Σ+": 10, "Π": 4}
     dioxide = levels_on_axis("D∞h", np.array([2, 1, 0]), np.array([[2, 1]] * 3))
     assert dioxide == {"Σg+": 5, "Πg": 1, "Σu+": 4, "Πu": 2}
