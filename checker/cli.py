@@ -8,7 +8,7 @@ from typing import Annotated, BinaryIO
 import typer
 
 from checker import __version__
-from checker.errors import HundsightError
+from checker.errors import HundsightError, UnreadableInput
 
 CLEAN, STOPPED, UNREADABLE, FAULT, INTERRUPTED = 0, 1, 2, 3, 130
 PROGRAM = "hundsight"
@@ -27,6 +27,8 @@ and repairs ready to paste.
 """
 CHECK_HELP = """\
 Judge decks: is this the electronic state that was meant, and can it exist at all?
+
+DECK is a deck, an XYZ file, a folder of them, or - for standard input.
 
 \b
   hundsight check water.deck.toml
@@ -60,7 +62,6 @@ app = typer.Typer(
     name=PROGRAM,
     rich_markup_mode=None,
     pretty_exceptions_enable=False,
-    no_args_is_help=True,
     context_settings={"help_option_names": ["-h", "--help"]},
 )
 
@@ -79,19 +80,22 @@ def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
     stdin : what the deck `-` is read from; by default this process's own standard input.
     """
     try:
-        status = typer.main.get_command(app).main(list(argv), prog_name=PROGRAM, standalone_mode=False, obj=stdin)
+        command = typer.main.get_command(app)
+        status = command.main(list(argv) or ["--help"], prog_name=PROGRAM, standalone_mode=False, obj=stdin)
         sys.stdout.flush()
     except KeyboardInterrupt:
         return INTERRUPTED
     except BrokenPipeError:
         _close_quietly()
         return INTERRUPTED
+    except UnreadableInput as unreadable:
+        return _complain(*map(str, unreadable.complaints))
     except HundsightError as known:
         return _complain(str(known))
     except Exception as fault:
         sentence = _usage_sentence(fault)
         return _complain(sentence) if sentence else _own_fault(fault)
-    return int(status or CLEAN)
+    return int(status or CLEAN) if argv else UNREADABLE
 
 
 def _print_version(wanted: bool) -> None:
@@ -113,9 +117,7 @@ def _one_of(*words: str) -> Callable[[str], list[str]]:
 
 Decks = Annotated[
     list[str] | None,
-    typer.Argument(
-        metavar="DECK...", help="Decks, XYZ files or folders of them; - reads standard input.", show_default=False
-    ),
+    typer.Argument(metavar="DECK", hidden=True, show_default=False),
 ]
 Format = Annotated[
     str,
@@ -147,8 +149,8 @@ Apply = Annotated[
 Name = Annotated[
     str | None,
     typer.Argument(
-        metavar="[NAME]",
-        help="A rule, or deck or report for their JSON Schemas.",
+        metavar="NAME",
+        hidden=True,
         show_default=False,
         autocompletion=_complete_name,
     ),
@@ -158,12 +160,12 @@ Version = Annotated[
 ]
 
 
-@app.callback(help=HELP, epilog="Begin with: hundsight check --help. What each rule asks for: hundsight explain.")
+@app.callback(help=HELP, epilog="Next: hundsight check --help, and hundsight explain for all rules.")
 def _root(*, version: Version = False) -> None:
     """Hold the options of the program as a whole."""
 
 
-@app.command(help=CHECK_HELP, epilog=EXIT_STATUS)
+@app.command(help=CHECK_HELP, short_help="Judge decks before they are submitted.", epilog=EXIT_STATUS)
 def check(
     context: typer.Context,
     decks: Decks = None,
@@ -198,7 +200,7 @@ def check(
     return STOPPED if outcome.stopped else CLEAN
 
 
-@app.command(help=EXPLAIN_HELP)
+@app.command(help=EXPLAIN_HELP, short_help="Tell what a rule asks for, and why.")
 def explain(name: Name = None) -> int:
     """Print the page of a name, or the catalogue."""
     from checker import explain as pages
@@ -210,10 +212,11 @@ def explain(name: Name = None) -> int:
     return CLEAN
 
 
-def _complain(sentence: str) -> int:
+def _complain(*sentences: str) -> int:
     from checker.report.plain import plain
 
-    print(f"{PROGRAM}: {plain(sentence)}", file=sys.stderr)
+    for sentence in sentences:
+        print(f"{PROGRAM}: {plain(sentence)}", file=sys.stderr)
     return UNREADABLE
 
 
@@ -230,7 +233,7 @@ def _usage_sentence(error: Exception) -> str | None:
         nearest = getattr(error, "possibilities", None)
         hint = f"the nearest is {nearest[0]}" if nearest else f"{help_command} lists them"
         return f"no option is called {option}; {hint}"
-    said = str(getattr(error, "message", error)).rstrip(".")
+    said = str(getattr(error, "message", error)).replace(". Did you mean ", "; the nearest is ").rstrip(".?")
     return f"{said[:1].lower()}{said[1:]}; {help_command} shows what can be asked for"
 
 

@@ -1,6 +1,7 @@
 """What `hundsight explain` says: the page of a rule, the catalogue of rules, the schemas of deck and report."""
 
 import difflib
+import re
 import textwrap
 from importlib import resources
 
@@ -15,6 +16,10 @@ GRADE_MEANINGS = {
     Grade.DOUBT: "the state exists, but it is probably not the one meant, or the job will not do what is wanted",
     Grade.NOTE: "worth knowing before spending the hours",
 }
+
+
+WIDEST = 100
+_ENTRY = re.compile(r"\s|[A-Z][a-z]+( [a-z]+)?: ")
 
 
 def page(name: str, rules: RuleSet, width: int) -> str:
@@ -56,7 +61,10 @@ def catalogue(rules: RuleSet, width: int) -> str:
             subsequent_indent=" " * (id_width + 9),
         )
     ]
-    meanings = [f"{grade.word:<5}  {GRADE_MEANINGS[grade]}" for grade in sorted(Grade, reverse=True)]
+    meanings = [
+        textwrap.fill(f"{grade.word:<5}  {GRADE_MEANINGS[grade]}", max(width, 40), subsequent_indent=" " * 7)
+        for grade in sorted(Grade, reverse=True)
+    ]
     closing = "hundsight explain RULE gives a rule's ground, a worked case and its source."
     schemas = f"hundsight explain {' and explain '.join(SCHEMAS)} print the JSON Schema of each."
     return "\n".join([*lines, "", *meanings, "", closing, schemas]) + "\n"
@@ -72,14 +80,16 @@ def _manual(rule: Rule, width: int) -> str:
 
 
 def _reflowed(paragraph: str, width: int) -> str:
-    """Wrap each line that is too long; shorter ones stay as their author broke them."""
+    """Fill a paragraph to the width; an entry such as "Passes: ..." and an indented line begin a line of their own."""
+    entries: list[str] = []
+    for line in paragraph.splitlines():
+        if entries and not _ENTRY.match(line):
+            entries[-1] += " " + line.strip()
+        else:
+            entries.append(line)
     return "\n".join(
-        part
-        for line in paragraph.splitlines()
-        for part in textwrap.wrap(
-            line, width, subsequent_indent="  ", break_long_words=False, replace_whitespace=False
-        )
-        or [""]
+        textwrap.fill(entry, min(width, WIDEST), subsequent_indent="  " if _ENTRY.match(entry) else "")
+        for entry in entries
     )
 
 
