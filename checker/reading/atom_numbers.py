@@ -14,10 +14,10 @@ def faults_of_numbers(mapping: Mapping[str, Any], n_atoms: int) -> list[Fault]:
     if isinstance(species, Mapping):
         at: KeyPath = ("species", "ghost_atoms")
         ghosts = list(_faults_of_list(species.get("ghost_atoms"), at, n_atoms, {}))
-        faults += cut_short(ghosts, "species.ghost_atoms", at)
+        faults += cut_short(ghosts, "species.ghost_atoms")
     fragments = mapping.get("fragments")
     if isinstance(fragments, list):
-        faults += cut_short(list(_faults_of_fragments(fragments, n_atoms)), "the fragments", ("fragments",))
+        faults += cut_short(list(_faults_of_fragments(fragments, n_atoms)), "the fragments")
     return faults
 
 

@@ -79,7 +79,7 @@ def _read_integer(comment: Comment, key: str, value: str, column: int) -> Iterat
 
 
 def _no_integer(key: str, value: str) -> str:
-    turned = _SIGN_LAST.fullmatch(value.strip())
+    turned = _SIGN_LAST.fullmatch(value.strip()) if key == "charge" else None
     how = f"; write {key}={turned[2]}{turned[1]}" if turned else f", such as {key}=1"
     return f"{key} on the comment line is {quoted(value)}, but must be a whole number{how}"
 

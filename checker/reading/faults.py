@@ -45,10 +45,11 @@ def in_order(complaints: Iterable[Complaint]) -> tuple[Complaint, ...]:
     return (*listed[:MAX_COMPLAINTS], rest)
 
 
-def cut_short(faults: Sequence[Fault], of: str, at: KeyPath) -> list[Fault]:
+def cut_short(faults: Sequence[Fault], of: str) -> list[Fault]:
     """Return the first faults of a long list, and a last one that counts the others."""
     n_left = len(faults) - MAX_COMPLAINTS_PER_LIST
     if n_left <= 0:
         return list(faults)
-    rest = Fault(at, f"and {plural(n_left, 'more fault')} in {of}; mend the first ones and check again")
+    first_left = faults[MAX_COMPLAINTS_PER_LIST].at
+    rest = Fault(first_left, f"and {plural(n_left, 'more fault')} in {of}; mend the first ones and check again")
     return [*faults[:MAX_COMPLAINTS_PER_LIST], rest]

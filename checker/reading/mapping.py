@@ -18,6 +18,9 @@ NESTED_TOO_DEEP = "lists or tables are nested too deep to be read; a deck needs 
 INTEGER_TOO_LONG = "a whole number has too many digits to be read; the keys of a deck take at most 18"
 NOT_A_TABLE = "a JSON deck is an object of tables, so it must begin with { and end with }"
 
+DEEPEST_SHOWN = 100
+
+_BRACKET = re.compile(r"[\[\]{}]")
 _PLACE = re.compile(r" \(at (?:line (\d+), column (\d+)|end of document)\)$")
 _LONG_INTEGER = re.compile(r"[0-9][0-9_]{4299,}")
 _TWICE = ("Cannot overwrite", "Cannot declare", "Duplicate inline", "Cannot mutate", "Cannot redefine")
@@ -68,13 +71,23 @@ def mapping_of(places: DeckPlaces) -> dict[str, Any]:
     try:
         found = _toml(places) if places.kind is Kind.TOML else _json(places)
     except RecursionError:
-        raise UnreadableInput(complaint(Span(places.file), NESTED_TOO_DEEP)) from None
+        _refuse(places, NESTED_TOO_DEEP, *place_in(places.text, _where_too_deep(places.text)))
     except ValueError:  # the one left: int() refuses thousands of digits
         long = _LONG_INTEGER.search(places.text)
         _refuse(places, INTEGER_TOO_LONG, *place_in(places.text, long.start() if long else 0))
     if not isinstance(found, dict):
         _refuse(places, NOT_A_TABLE, 1, 1)
     return found
+
+
+def _where_too_deep(text: str) -> int:
+    """Return where brackets are first nested beyond all need; those inside texts are counted along."""
+    depth = 0
+    for bracket in _BRACKET.finditer(text):
+        depth += 1 if bracket[0] in "[{" else -1
+        if depth > DEEPEST_SHOWN:
+            return bracket.start()
+    return 0
 
 
 def _toml(places: DeckPlaces) -> dict[str, Any]:

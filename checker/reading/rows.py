@@ -35,7 +35,7 @@ def geometry_of_rows(rows: object, length_unit: object) -> Geometry | list[Fault
         for index, row in enumerate(rows)
         if (message := _sentence_on_row(row, scale))
     ]
-    return cut_short(faults, "species.atoms", ATOMS)
+    return cut_short(faults, "species.atoms")
 
 
 def geometry_of(nuclides: Iterable[Nuclide], coordinates: Any) -> Geometry:

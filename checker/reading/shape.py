@@ -84,7 +84,7 @@ def _hint(value: object, needed: str) -> str:
     ):
         return f"; write {value.strip()}, without quotes"
     if isinstance(value, int | float) and "text" in needed:
-        return "; put it in quotes"
+        return f'; write "{described(value)}"'
     return ""
 
 
@@ -155,7 +155,7 @@ def _too_small(path: KeyPath, error: ErrorDetails) -> str:
 
 
 def _too_large(path: KeyPath, error: ErrorDetails) -> str:
-    return f"{key_text(path)} is {described(error['input'])}, but whole numbers have at most 18 digits"
+    return f"{key_text(path)} is too large; the whole numbers of a deck have at most 18 digits"
 
 
 def _not_finite(path: KeyPath, error: ErrorDetails) -> str:

@@ -118,7 +118,7 @@ def _read_frame(draft: _Draft, lines: LineStream) -> None:
     (comment_line,) = lines.take(1) or (None,)
     if comment_line is None:
         draft.complain(
-            "the file ends after the number of atoms; a comment line and the atoms must follow", None, None
+            "the file ends after the number of atoms; a comment line and the atoms must follow", draft.first_line
         )
         return
     layout = _read_comment_line(draft, comment_line)
@@ -141,7 +141,7 @@ def _read_count(draft: _Draft, lines: LineStream) -> int:
         message = f"expected the number of atoms alone on this line, found {shown}{REST_NOT_READ}"
     elif len(line.strip()) > 18 or int(line) > MAX_FRAME_ATOMS:
         message = (
-            f"the count line says {shown} atoms, but at most {MAX_FRAME_ATOMS:,} a frame are read{REST_NOT_READ}"
+            f"the count line says {shown[1:-1]} atoms, but at most {MAX_FRAME_ATOMS:,} a frame are read{REST_NOT_READ}"
         )
     else:
         if not int(line):
