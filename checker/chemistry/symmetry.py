@@ -1,0 +1,234 @@
+"""From a geometry to its point group, frame and abelian subgroup, exact about the tolerance.
+
+The group found is the largest one for which no atom would have to move farther than the tolerance to make the body
+exactly symmetric (see `fitting` for how the nearest symmetric body is found). All atoms weigh alike, so the centre
+is the centroid.
+
+Provides `find_symmetry`, `Symmetry` and `deviation_from`.
+"""
+
+from dataclasses import dataclass, field
+from functools import cached_property
+
+import numpy as np
+
+from checker.chemistry import levels
+from checker.chemistry.axes import placements
+from checker.chemistry.bodies import Body, Floats, Ints, body_of
+from checker.chemistry.fitting import Fit, settled
+from checker.chemistry.frames import Placement, diagonal_subgroup, permutations_among, place
+from checker.chemistry.irreps import point_group
+from checker.chemistry.lines import CONTINUOUS, Line, line_through, place_on_line
+from checker.chemistry.point_groups import standard_operations
+from checker.errors import NotDerivable
+
+DEFAULT_TOLERANCE = 0.01
+"""Angstrom. Coordinates printed to three decimals, and optimisations that stop at the usual step of about 0.001 to
+0.003 angstrom, stay well below; the distortions that chemistry knows, such as those of Jahn and Teller or a
+flattened pyramid, lie well above (common practice, no source)."""
+
+LARGEST_REACH = 0.3
+"""Angstrom: a higher group that needs larger moves than this is another molecule."""
+
+MOST_ATOMS = 3_000
+"""Beyond this the distances of all atoms from each other would not be held in memory lightly."""
+
+
+@dataclass(frozen=True, eq=False)
+class Symmetry:
+    """The point group of a body at a tolerance, where it lies, and what is next above.
+
+    Attributes
+    ----------
+    group : Schoenflies symbol.
+    center : (3,) in the coordinates given, angstrom.
+    deviation_angstrom : the largest distance an atom would have to move for exact symmetry.
+    symmetrised : (n, 3) coordinates after that move, angstrom.
+    tolerance : angstrom.
+    axis : (3,) unit vector along a linear molecule; None for the others.
+    axes : "as-given" or "mulliken": how labels are bound to axes.
+    abelian_choice : "D2" or "C2v", for the abelian subgroup of Td and D2d.
+
+    """
+
+    group: str
+    center: Floats
+    deviation_angstrom: float
+    symmetrised: Floats
+    tolerance: float
+    axis: Floats | None
+    axes: str
+    abelian_choice: str
+    _body: Body = field(repr=False)
+    _fit: Fit | Line | None = field(repr=False)
+
+    @cached_property
+    def placement(self) -> Placement:
+        """The group in the frame of its labels."""
+        if isinstance(self._fit, Fit):
+            placed = self._placed(self.group, self._fit.operations)
+        else:
+            placed = self.subgroup(self.group, self.axes)
+        assert placed is not None, self.group
+        return placed
+
+    @cached_property
+    def abelian(self) -> Placement:
+        """The largest subgroup that is within D2h, in the frame of its own labels.
+
+        Where there are several it is the one that the group's own frame makes diagonal, but for the choice.
+        """
+        placed: Placement | None
+        if not isinstance(self._fit, Fit):
+            placed = self.subgroup(CONTINUOUS[self.group], self.axes)
+        elif self.group in ("Td", "D2d") and self.abelian_choice == "C2v":
+            placed = self._placed("C2v", self.operations)
+        else:
+            symbol, indices = diagonal_subgroup(self.group)
+            placed = (
+                self._placed(symbol, self.operations[list(indices)]) if symbol != self.group else self.placement
+            )
+        assert placed is not None, self.group
+        return placed
+
+    @property
+    def operations(self) -> Floats:
+        """(g, 3, 3) in the order of `standard_operations`; for continuous groups see `Placement`."""
+        return self.placement.operations
+
+    @property
+    def permutations(self) -> Ints:
+        """(g, n) image atom of each atom under each of the operations."""
+        return self.placement.permutations
+
+    @property
+    def frame(self) -> Floats:
+        """(3, 3) rotation R, x_standard = R (x - center)."""
+        return self.placement.frame
+
+    @property
+    def frame_note(self) -> str:
+        """How the coordinates' axes were turned, in words."""
+        return self.placement.frame_note
+
+    @property
+    def abelian_group(self) -> str:
+        """Symbol of the largest subgroup that is within D2h."""
+        return self.abelian.group
+
+    @property
+    def abelian_frame(self) -> Floats:
+        """(3, 3) rotation into the frame of the abelian group's labels."""
+        return self.abelian.frame
+
+    @cached_property
+    def next_higher(self) -> tuple[str, float] | None:
+        """The nearest group above this one, and the largest move of an atom (angstrom) that it asks for.
+
+        None where no group above lies within `LARGEST_REACH`. Worked out when first asked for.
+        """
+        return levels.next_higher(self._body, self._fit, self.tolerance, LARGEST_REACH)
+
+    def subgroup(self, symbol: str, axes: str = "as-given") -> Placement | None:
+        """Place a group that is this one or within it; None where it is neither.
+
+        Parameters
+        ----------
+        symbol : as `irreps.point_group` writes it.
+        axes : "as-given" or "mulliken".
+
+        """
+        if self._fit is None:
+            return _at_a_point(symbol, len(self.symmetrised))
+        if isinstance(self._fit, Line):
+            return place_on_line(symbol, self._fit, axes, self.tolerance)
+        group = point_group(symbol)
+        if group is None or group.order is None or len(self._fit.operations) % group.order:
+            return None
+        return self._placed(symbol, self._fit.operations, axes)
+
+    def _placed(self, symbol: str, matrices: Floats, axes: str | None = None) -> Placement | None:
+        assert isinstance(self._fit, Fit)
+        lookup = permutations_among(self._fit.operations, self._fit.permutations)
+        found = placements(matrices, symbol)
+        return place(
+            symbol,
+            found,
+            lookup,
+            positions=self._fit.symmetrised,
+            axes=axes or self.axes,
+            tolerance=self.tolerance,
+        )
+
+
+def find_symmetry(
+    kinds: Ints,
+    coordinates: Floats,
+    tolerance: float = DEFAULT_TOLERANCE,
+    axes: str = "as-given",
+    abelian_choice: str = "D2",
+) -> Symmetry:
+    """Find the point group of a body.
+
+    Parameters
+    ----------
+    kinds : (n,) int, equal for atoms that an operation may exchange.
+    coordinates : (n, 3) angstrom.
+    tolerance : angstrom; how far an atom may lie from its place in an exactly symmetric body.
+    axes : "as-given" or "mulliken".
+    abelian_choice : "D2" or "C2v", for the abelian subgroup of Td and D2d.
+
+    Raises
+    ------
+    NotDerivable
+        If there is no atom or more than `MOST_ATOMS`, if two atoms of one kind lie closer than four times the
+        tolerance, or if an axis has a higher order than is listed.
+
+    """
+    if not 0 < len(kinds) <= MOST_ATOMS:
+        raise NotDerivable(f"the symmetry of {len(kinds)} atoms is not worked out; from 1 to {MOST_ATOMS} it is")
+    body, center = body_of(kinds, coordinates)
+    fit = _fit(body, tolerance)
+    if fit is None:
+        group, deviation, places = "Kh", float(body.radii.max()), np.zeros_like(body.positions)
+    else:
+        group, deviation, places = fit.symbol, fit.deviation, fit.symmetrised
+    axis = fit.axis if isinstance(fit, Line) else None
+    return Symmetry(
+        group, center, deviation, places + center, tolerance, axis, axes, abelian_choice, _body=body, _fit=fit
+    )
+
+
+def _fit(body: Body, tolerance: float) -> Fit | Line | None:
+    """Fit the largest group; None for a body that is a point."""
+    if body.radii.max() <= tolerance:
+        return None
+    _refuse_coincidence(body, tolerance)
+    return line_through(body, tolerance) or levels.largest_group(body, tolerance)
+
+
+def deviation_from(placement: Placement, coordinates: Floats) -> tuple[Floats, float]:
+    """Return coordinates (n, 3) made symmetric under a placed finite group, and the largest move, angstrom."""
+    center = coordinates.mean(axis=0)
+    _, places, deviation = settled(coordinates - center, placement.operations, placement.permutations)
+    return places + center, deviation
+
+
+def _refuse_coincidence(body: Body, tolerance: float) -> None:
+    if body.gap <= 4.0 * tolerance:
+        first, second = (atom + 1 for atom in sorted(body.closest_pair))
+        raise NotDerivable(
+            f"atoms {first} and {second} are alike and {body.gap:.3f} angstrom apart, too close to tell which is "
+            f"the image of which within {tolerance:g} angstrom"
+        )
+
+
+def _at_a_point(symbol: str, n_atoms: int) -> Placement | None:
+    """Place any group on a free atom, whose axes are those given."""
+    group = point_group(symbol)
+    if group is None:
+        return None
+    finite = (CONTINUOUS).get(symbol, symbol)
+    operations = standard_operations(finite)
+    images = np.broadcast_to(np.arange(n_atoms), (len(operations), n_atoms))
+    return Placement(symbol, np.eye(3), "axes as given", operations, images)
