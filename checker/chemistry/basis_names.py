@@ -19,7 +19,7 @@ _STARS = (("g(d,p)", "g**"), ("g(d)", "g*"))
 _SV_P = re.compile(r"sv_p(?![a-z])_?")
 #: cc-pVTZ+d is how cc-pV(T+d)Z is written where brackets are not wanted.
 _TIGHT_D = re.compile(r"pv([dtq5])z\+d(?![a-z])")
-_POLARIZED = re.compile(r"(6311?\+{0,2}g)\((\d?d)(\d?f)?(?:,(\d?p)(\d?d)?)?\)")
+_POLARIZED = re.compile(r"(6311?\+{0,2}g)\(([2-9]?d)([2-9]?f)?(?:,([2-9]?p)([2-9]?d)?)?\)")
 _LIKENESS = 0.6
 _LONGEST = 60  # characters of a name that are compared; published ones have half of that
 

@@ -14,6 +14,7 @@ from dataclasses import dataclass
 from functools import cache
 
 from checker import tables
+from checker.chemistry.basis_sets import basis_set
 from checker.chemistry.shells import functions_in_subshell
 from checker.elements import symbol_of
 from checker.errors import NotDerivable
@@ -94,14 +95,14 @@ def nearest_counts(z: int, replaced: int) -> tuple[PublishedCount, ...]:
 def electrons_replaced(set_name: str, z: int) -> int | None:
     """Return the electrons that a set's potential replaces for an element.
 
-    The name is read in any case and with any hyphens and spaces; a family's orbital sets (``def2-TZVP``) and its
+    The name is read as people write it, see `basis_names`; a family's orbital sets (``def2-TZVP``) and its
     potential (``def2-ECP``) are both known. 0 is an all-electron element of the set; elements lighter than all
     those that a potential is made for are all-electron too. None where the set or the element in it is unknown.
 
     >>> electrons_replaced("def2tzvp", 53), electrons_replaced("def2-TZVP", 6), electrons_replaced("mine", 53)
     (28, 0, None)
     """
-    name = _plain(set_name)
+    name = _table_name(set_name)
     counted = _COUNT_IN_NAME.fullmatch(name)
     if counted is not None:
         electrons = int(counted[1])
@@ -115,7 +116,7 @@ def electrons_replaced(set_name: str, z: int) -> int | None:
 
 def is_known_set(set_name: str) -> bool:
     """Tell whether a set is in the table, or its name states what it replaces."""
-    name = _plain(set_name)
+    name = _table_name(set_name)
     return name in _sets_by_plain_name() or _COUNT_IN_NAME.fullmatch(name) is not None
 
 
@@ -125,8 +126,8 @@ def f_electrons_in_core(z: int, replaced: int, set_name: str | None = None) -> i
     0 for a count that no f-in-core potential uses. Raises NotDerivable where potentials with and without f
     electrons in the core replace as many (54 for Gd, Tb and Dy), unless the name of the set decides.
     """
-    if set_name is not None and _sets_by_plain_name().get(_plain(set_name), {}).get(z) == replaced:
-        return replaced - _below_open_f().get(_plain(set_name), replaced)
+    if set_name is not None and _sets_by_plain_name().get(_table_name(set_name), {}).get(z) == replaced:
+        return replaced - _below_open_f().get(_table_name(set_name), replaced)
     candidates = {count.f_electrons_in_core for count in published_counts(z) if count.electrons == replaced}
     if len(candidates) > 1:
         ways = " or ".join(f"{n} f electrons" for n in sorted(candidates))
@@ -162,6 +163,15 @@ def _sets_by_plain_name() -> Mapping[str, Mapping[int, int]]:
 def _below_open_f() -> Mapping[str, int]:
     rows = (row for row in tables.core_potentials() if row.below_open_f is not None)
     return {_plain(name): row.below_open_f for row in rows for name in row.names if row.below_open_f is not None}
+
+
+def _table_name(set_name: str) -> str:
+    """Return the plain name that the table has for a set, also where it is written as 6-31G(d) for 6-31G*."""
+    name = _plain(set_name)
+    if name in _sets_by_plain_name():
+        return name
+    known = basis_set(set_name)
+    return name if known is None else _plain(known.name)
 
 
 def _plain(set_name: str) -> str:
