@@ -13,15 +13,17 @@ from numpy.typing import NDArray
 
 from checker.chemistry import ledger as books
 from checker.deck import Aside
-from checker.elements import symbol_of
+from checker.elements import number_of, symbol_of
 from checker.errors import NotDerivable
-from checker.findings import Expected, Ledger
+from checker.findings import BasisBook, Expected, Ledger
 from checker.model import Job
 
 if TYPE_CHECKING:
+    from checker.chemistry.basis_sets import Shells
     from checker.chemistry.configurations import GroundLevel
     from checker.chemistry.contacts import LengthSlip, Nearest
     from checker.chemistry.irreps import PointGroup
+    from checker.chemistry.job_basis import JobBasis
     from checker.chemistry.parity import Cause
     from checker.chemistry.valence import Valence
 
@@ -143,6 +145,40 @@ class Facts:
         if basis is None:
             raise NotDerivable("the core potential is to come from the basis, and the deck names no basis")
         return basis.for_element.get(symbol, basis.name)
+
+    @cached_property
+    def job_basis(self) -> "JobBasis":
+        """Shells on all atoms, ghosts included; not derivable without a known basis that has all the elements."""
+        from checker.chemistry.job_basis import job_basis
+
+        basis = self.job.basis
+        if basis is None:
+            raise NotDerivable("the deck names no basis")
+        for_element = {
+            z: name for symbol, name in basis.for_element.items() if (z := number_of(symbol)) is not None
+        }
+        return job_basis(basis.name, for_element, basis.form, self.numbers)
+
+    @property
+    def basis_shells(self) -> "Mapping[int, tuple[Shells, ...]]":
+        """Shells by atomic number, of all elements present; see `job_basis`."""
+        return self.job_basis.shells
+
+    @cached_property
+    def n_functions(self) -> int:
+        """Basis functions on all atoms, ghosts included; see `job_basis`."""
+        return self.job_basis.n_functions
+
+    @cached_property
+    def basis_book(self) -> BasisBook | None:
+        """The basis for the report, None where the deck names none."""
+        if self.job.basis is None:
+            return None
+        try:
+            form = self.job_basis.form
+        except NotDerivable:
+            return BasisBook(name=self.job.basis.name, form=self.job.basis.form)
+        return BasisBook(name=self.job.basis.name, n_functions=self.n_functions, form=form)
 
     @cached_property
     def ledger(self) -> Ledger:

@@ -155,6 +155,20 @@ class Expected:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class BasisBook:
+    """The basis of a job as the deck names it; None is what cannot be worked out.
+
+    `form` is None where the functions of different angular momenta have different ones; `by_irrep` counts
+    functions.
+    """
+
+    name: str
+    n_functions: int | None = None
+    form: str | None = None
+    by_irrep: Mapping[str, int] | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class DeckReport:
     """All that is said of one deck; findings stand worst first, then by line and rule, accepted ones last.
 
