@@ -130,7 +130,8 @@ def _books(ledger: Ledger, page: Page, *, short: bool) -> Iterator[str]:
             label = ""
         yield from page.entry(label, _balance(ledger))
     else:
-        yield from page.entry(label, f"{_formula(ledger.by_element)}: {_balance(ledger)}")
+        species = f"{_formula(ledger.by_element)}, charge {signed(ledger.charge)}"
+        yield from page.entry(label, f"{species}: {_electrons(ledger)}")
 
 
 def _book_table(ledger: Ledger) -> list[str]:
@@ -160,13 +161,17 @@ def _balance(ledger: Ledger) -> str:
             "because what the core potentials replace is"
         )
     core = f" less {ledger.core_electrons_replaced} in core potentials" if ledger.core_electrons_replaced else ""
-    split = (
-        "alpha and beta cannot be stated"
-        if ledger.n_alpha is None
-        else f"{ledger.n_alpha} alpha, {ledger.n_beta} beta, {ledger.n_unpaired} unpaired"
-    )
     total = f"nuclear charge {ledger.nuclear_charge}{core}, charge {signed(ledger.charge)}"
-    return f"{total}: {counted(ledger.n_electrons, 'electron')}, {split}"
+    return f"{total}: {_electrons(ledger)}"
+
+
+def _electrons(ledger: Ledger) -> str:
+    assert ledger.n_electrons is not None
+    if ledger.n_alpha is None:
+        split = "alpha and beta cannot be stated"
+    else:
+        split = f"{ledger.n_alpha} alpha, {ledger.n_beta} beta, {ledger.n_unpaired} unpaired"
+    return f"{counted(ledger.n_electrons, 'electron')}, {split}"
 
 
 def _formula(books: tuple[ElementBook, ...]) -> str:

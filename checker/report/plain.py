@@ -52,8 +52,8 @@ def shown(value: Json) -> str:
 
 
 def evidence(found: Iterable[tuple[str, Json]]) -> str:
-    """Return the evidence as one line: "electrons 9; multiplicity 1"."""
-    return "; ".join(f"{plain(key.replace('_', ' '))} {shown(value)}" for key, value in found)
+    """Return the evidence as one line: "electrons 9; multiplicity 1". What is not known is left out."""
+    return "; ".join(f"{plain(key.replace('_', ' '))} {shown(value)}" for key, value in found if value is not None)
 
 
 def grade_counts(grades: Iterable[Grade]) -> str:
