@@ -16,7 +16,7 @@ Source: A. I. Boldyrev, J. Simons, J. Chem. Phys. 98, 4745 (1993); X.-B. Wang, L
 
 from collections.abc import Iterator
 
-from checker.chemistry.attachment import Unbound, hill_formula, unbound_because
+from checker.chemistry.attachment import Unbound, unbound_because, written_formula
 from checker.chemistry.configurations import anion_is_bound, ground_level, written_ion
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Json, NotJudged, Repair
@@ -32,7 +32,7 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
         return
     found = unbound_because(facts.real_numbers, facts.charge, facts.valence)
     if found is not None:
-        yield _finding(facts, f"{hill_formula(facts.real_numbers)}{_sign(facts.charge)}", found)
+        yield _finding(facts, f"{written_formula(facts.real_numbers)}{_sign(facts.charge)}", found)
 
 
 def _atom(facts: Facts, z: int) -> Iterator[Finding | NotJudged]:
@@ -41,23 +41,21 @@ def _atom(facts: Facts, z: int) -> Iterator[Finding | NotJudged]:
     if bound is None:
         yield NotJudged(f"whether {ion} is bound is not in the table")
     elif not bound:
-        extra = 1 if facts.charge == -1 else -1 - facts.charge
         why = (
             "The free atom takes up no electron: its electron affinity is not positive."
             if facts.charge == -1
             else "No free atom binds a second extra electron."
         )
-        yield _finding(facts, ion, Unbound(extra, why, 0.95))
+        yield _finding(facts, ion, Unbound(why, 0.95))
 
 
 def _finding(facts: Facts, species: str, found: Unbound) -> Finding:
-    electrons = "an electron" if found.extra == 1 else f"{found.extra} electrons"
-    evidence: dict[str, Json] = {"charge": facts.charge, "electrons_not_bound": found.extra}
+    evidence: dict[str, Json] = {"charge": facts.charge}
     if found.attachment_ev is not None:
         evidence["attachment_energy_ev"] = found.attachment_ev
     return Finding(
         at="species.charge",
-        message=f"{species} does not hold {electrons} in the gas phase; state its surroundings or another charge",
+        message=f"{species} does not hold all its electrons in the gas phase; change the charge or the environment",
         why=found.why,
         confidence=found.confidence,
         evidence=evidence,

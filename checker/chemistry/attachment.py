@@ -7,7 +7,7 @@ Sources: A. I. Boldyrev, J. Simons, J. Chem. Phys. 98, 4745 (1993) and X.-B. Wan
 Chem. 60, 105 (2009) for multiply charged anions; K. D. Jordan, P. D. Burrow, Chem. Rev. 87, 557 (1987) for
 temporary anions (all from memory).
 
-Provides `unbound_because`.
+Provides `unbound_because`, `hill_formula` and `written_formula`.
 """
 
 from collections import Counter
@@ -27,15 +27,15 @@ LARGEST_SMALL_TRIANION = 12
 LARGEST_SATURATED = 12
 """Atoms other than hydrogen; larger saturated molecules may hold an electron by their polarisability or dipole."""
 
+_IUPAC_ORDER = "B Ge Si C Sb As P N H Po Te Se S At I Br Cl O F".split()
 _SATURATED_ELEMENTS = frozenset({1, 6, 7, 8, 9, 14, 15, 16})
 _REPELLING = frozenset({7, 8, 9, 15, 16})
 
 
 @dataclass(frozen=True, slots=True)
 class Unbound:
-    """Why electrons are not bound: `extra` of them, the ground in one sentence, confidence 0 to 1."""
+    """Why electrons are not bound: the ground in one sentence, confidence 0 to 1, an energy if one is known."""
 
-    extra: int
     why: str
     confidence: float
     attachment_ev: float | None = None
@@ -53,9 +53,9 @@ def unbound_because(numbers: Ints, charge: int, valence: Valence) -> Unbound | N
     energy = attachment_energies().get(hill_formula(numbers))
     if energy is not None:
         why = f"Electron transmission finds the anion {energy:.1f} eV above the neutral molecule and an electron."
-        return Unbound(1, why, 0.8, energy)
+        return Unbound(why, 0.8, energy)
     if heavy <= LARGEST_SATURATED and _is_saturated(numbers, valence):
-        return Unbound(1, "All valences are closed by single bonds, and no low-lying empty orbital is left.", 0.85)
+        return Unbound("All valences are closed by single bonds, and no low-lying empty orbital is left.", 0.85)
     return None
 
 
@@ -67,12 +67,30 @@ def hill_formula(numbers: Ints) -> str:
     return "".join(f"{symbol}{counts[symbol] if counts[symbol] > 1 else ''}" for symbol in order)
 
 
+def written_formula(numbers: Ints) -> str:
+    """Return the formula as chemists write it: organic molecules in Hill order, others in the IUPAC sequence.
+
+    Source: Nomenclature of Inorganic Chemistry, IUPAC Recommendations 2005, table VI (from memory).
+
+    >>> import numpy as np
+    >>> written_formula(np.array([8, 8, 16, 8, 8])), written_formula(np.array([1, 1, 1, 7]))
+    ('SO4', 'NH3')
+    """
+    present = set(numbers.tolist())
+    if {1, 6} <= present:
+        return hill_formula(numbers)
+    rank = {symbol: place for place, symbol in enumerate(_IUPAC_ORDER)}
+    counts = Counter(symbol_of(z) for z in numbers.tolist())
+    order = sorted(counts, key=lambda symbol: (rank.get(symbol, -1), symbol))
+    return "".join(f"{symbol}{counts[symbol] if counts[symbol] > 1 else ''}" for symbol in order)
+
+
 def _crowded(numbers: Ints, charge: int, heavy: int) -> Unbound | None:
     most = LARGEST_SMALL_DIANION if charge == -2 else LARGEST_SMALL_TRIANION
     if heavy > most or not is_covalent()[numbers].all():
         return None
     why = "The charges repel each other more than so small an anion can bind; water, ions or a crystal hold it."
-    return Unbound(-1 - charge, why, 0.9)
+    return Unbound(why, 0.9)
 
 
 def _is_saturated(numbers: Ints, valence: Valence) -> bool:

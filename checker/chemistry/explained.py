@@ -56,7 +56,7 @@ def unexplained_sites(valence: Valence, charge: int, multiplicity: int) -> Expla
     tally = valence.tally
     if tally.unknown or tally.beyond or tally.subvalent or valence.lewis.gave_up or valence.bonds.overlaps:
         return None
-    if not _accounts_for(tally, charge, multiplicity - 1):
+    if tally.open and not _accounts_for(tally, charge, multiplicity - 1):
         atoms = tuple(site.atom for site in valence.sites if site.kind in _OPEN_KINDS)
         roomiest = sorted(set(atoms), key=lambda atom: (-valence.lewis.room(atom), atom))
         why = "An open valence is an unpaired electron or a charge, and the stated ones do not suffice."

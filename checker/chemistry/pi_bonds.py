@@ -138,10 +138,17 @@ class Pairing:
             if count[other] == 1 and self.left[other]:
                 ends.append(other)
 
+    def _may_go_on(self) -> bool:
+        """Take a step of the budget; say whether there was one left."""
+        self._steps += 1
+        if self._steps > _TOTAL_STEPS:
+            self.gave_up = True
+        return self._steps <= _TOTAL_STEPS
+
     def _another_is_open(self, start: int) -> bool:
         """Without this look an odd ring system would be searched to the end of the budget, in vain."""
         seen, waiting = {start}, [start]
-        while waiting:
+        while waiting and self._may_go_on():
             for j in self._partners[waiting.pop()]:
                 if j not in seen:
                     if self.left[j]:
@@ -156,7 +163,7 @@ class Pairing:
         came: dict[int, tuple[int, int]] = {}
         outer = {start}
         waiting = deque([start])
-        while waiting:
+        while waiting and self._may_go_on():
             i = waiting.popleft()
             for j in self._partners[i]:
                 if j in outer or j in inner or self.between(i, j) >= MOST_MULTIPLE_BONDS:
@@ -173,10 +180,7 @@ class Pairing:
 
     def _long_path(self, start: int) -> list[int] | None:
         """Depth-first over simple paths, within a budget: finds the paths through odd rings too."""
-        if self._steps > _TOTAL_STEPS:
-            self.gave_up = True
-            return None
-        limit = self._steps + _PATH_STEPS
+        limit = min(self._steps + _PATH_STEPS, _TOTAL_STEPS)
         path, on_path = [start], {start}
         branches = [self._next_steps(start)]
         while branches:
