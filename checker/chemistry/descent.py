@@ -18,7 +18,6 @@ import numpy as np
 from numpy.typing import NDArray
 
 from checker.chemistry.characters import characters_at, known_group, sample
-from checker.chemistry.irreps import PointGroup
 from checker.chemistry.point_groups import (
     IDENTITY,
     SAME_OPERATION,
@@ -115,7 +114,7 @@ def correlation(symbol: str, subgroup: str, turn: Matrices = IDENTITY) -> Correl
     """
     whole, part = known_group(symbol), known_group(subgroup)
     operations = np.einsum("ji,kjl,lm->kim", turn, sample(part.symbol).operations, turn)
-    if not _belong_to(whole, operations):
+    if not np.all(belong_to(whole.symbol, operations)):
         raise ValueError(f"{part.symbol} in this orientation is no subgroup of {whole.symbol}")
     found = {}
     for irrep, row in zip(whole.irreps, characters_at(whole.symbol, operations), strict=True):
@@ -124,13 +123,17 @@ def correlation(symbol: str, subgroup: str, turn: Matrices = IDENTITY) -> Correl
     return MappingProxyType(found)
 
 
-def _belong_to(group: PointGroup, operations: Matrices) -> bool:
+def belong_to(symbol: str, operations: Matrices) -> NDArray[np.bool_]:
+    """Tell which of the operations (k, 3, 3) are operations of a group in its standard frame, shape (k,)."""
+    group = known_group(symbol)
     if not group.is_continuous:
-        return bool(np.all(indices_of(operations, standard_operations(group.symbol)) >= 0))
+        return np.asarray(indices_of(operations, standard_operations(group.symbol)) >= 0)
     along = operations[:, 2, 2]
-    if group.symbol == "C∞v":
-        return bool(np.all(np.abs(along - 1) < SAME_OPERATION))
-    return group.symbol == "Kh" or bool(np.all(np.abs(np.abs(along) - 1) < SAME_OPERATION))
+    if group.symbol == "Kh":
+        along = np.ones_like(along)
+    elif group.symbol == "D∞h":
+        along = np.abs(along)
+    return np.asarray(np.abs(along - 1.0) < SAME_OPERATION)
 
 
 def descend(into: Correlation, levels: Mapping[str, int]) -> dict[str, int]:

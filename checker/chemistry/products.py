@@ -82,6 +82,22 @@ def antisymmetric_square(symbol: str, name: str) -> Mapping[str, int]:
     return _half_square(symbol, name, -1.0)
 
 
+@cache
+def exterior_power(symbol: str, name: str, n: int) -> Mapping[str, int]:
+    """Return the irreps of n electrons of one spin in a level: the antisymmetric n-th power of its irrep.
+
+    Raises ValueError where the group has no irrep of such a name or its level holds no so many.
+
+    >>> exterior_power("Oh", "T2g", 2)
+    {'T1g': 1}
+    """
+    group = known_group(symbol)
+    dimension = group.irreps[_row(group, name)].dimension
+    if not 0 <= n <= dimension:
+        raise ValueError(f"a level of {name} in {group.symbol} holds no {n} electrons of one spin")
+    return reduce(group.symbol, _antisymmetric_powers(group, name, n)[n])
+
+
 def _half_square(symbol: str, name: str, sign: float) -> dict[str, int]:
     group = known_group(symbol)
     once, twice = _powers(group, name, 2)
@@ -142,7 +158,7 @@ def _states_of_level(group: PointGroup, name: str, n: int) -> dict[int, Reals]:
 def _antisymmetric_powers(group: PointGroup, name: str, highest: int) -> list[Reals]:
     """Return the characters of the antisymmetric powers 0 to `highest` of an irrep (Newton's identities)."""
     powers = _powers(group, name, highest)
-    found = [np.ones_like(powers[0])]
+    found = [np.ones(len(sample(group.symbol).operations))]
     for k in range(1, highest + 1):
         terms = [(-1) ** (j - 1) * found[k - j] * powers[j - 1] for j in range(1, k + 1)]
         found.append(np.asarray(sum(terms)) / k)

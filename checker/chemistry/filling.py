@@ -1,0 +1,219 @@
+"""What an occupation by irrep means in the body's own group: whole degenerate levels, or one partly filled.
+
+The electrons of one spin fill whole levels where whole numbers of levels of the full group become exactly the
+counts in the group of the deck. Otherwise some level holds a part only, and the state is one of the terms of that
+level; a single determinant belongs to one term where the part of each spin spans a single irrep.
+
+Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., ch. 9 (from memory).
+"""
+
+import itertools
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+
+from checker.chemistry.characters import known_group
+from checker.chemistry.descent import Correlation, correlation, possible_levels
+from checker.chemistry.irreps import LINEAR_LETTERS, PointGroup
+from checker.chemistry.point_groups import IDENTITY, Matrices
+from checker.chemistry.products import exterior_power, product, terms_of_levels
+
+HIGHEST_OCCUPIED = 3
+"""Angular momentum of the highest orbitals that are occupied in any ground state: f in atoms, phi in molecules."""
+
+MOST_PARTNERS = 4
+"""Partners are sought among so many further states at most; a state of Ih has four partners."""
+
+
+@dataclass(frozen=True, slots=True)
+class OpenLevel:
+    """A degenerate level that is partly filled.
+
+    Attributes
+    ----------
+    irrep : of the full group.
+    dimension : orbitals of the level.
+    alpha, beta : electrons of each spin in it, by irrep of the deck's group.
+
+    """
+
+    irrep: str
+    dimension: int
+    alpha: Mapping[str, int]
+    beta: Mapping[str, int]
+
+    @property
+    def n_alpha(self) -> int:
+        """Alpha electrons in the level."""
+        return sum(self.alpha.values())
+
+    @property
+    def n_beta(self) -> int:
+        """Beta electrons in the level."""
+        return sum(self.beta.values())
+
+    @property
+    def n_electrons(self) -> int:
+        """Electrons in the level."""
+        return self.n_alpha + self.n_beta
+
+
+def electron_correlation(group: str, subgroup: str, turn: Matrices = IDENTITY) -> Correlation:
+    """Return for each irrep of occupied orbitals of the group the electrons of one spin that fill a level of it.
+
+    They are counted by irrep of the subgroup, as a deck counts them: a level of T2 holds three, in Td itself too.
+    """
+    dimensions = {irrep.name: irrep.dimension for irrep in known_group(subgroup).irreps}
+    orbital = _of_occupied_orbitals(known_group(group))
+    if group == subgroup:
+        return {name: {name: dimensions[name]} for name in dimensions if name in orbital}
+    return {
+        name: {below: n * dimensions[below] for below, n in row.items()}
+        for name, row in correlation(group, subgroup, turn).items()
+        if name in orbital
+    }
+
+
+def _of_occupied_orbitals(group: PointGroup) -> set[str]:
+    """Return the irreps that occupied orbitals can have: in the continuous groups none above f or phi."""
+    highest = {"Kh": 2 * HIGHEST_OCCUPIED + 2}.get(group.symbol)
+    letters = "".join(LINEAR_LETTERS)[: HIGHEST_OCCUPIED + 1]
+    irreps = group.irreps[:highest] if highest else group.irreps
+    if group.is_continuous and not highest:
+        irreps = tuple(irrep for irrep in irreps if irrep.name[0] in letters)
+    return {irrep.name for irrep in irreps if irrep.of_orbitals}
+
+
+def fills_whole_levels(into: Correlation, electrons: Mapping[str, int], most: Mapping[str, int] | None) -> bool:
+    """Tell whether electrons of one spin can be whole levels; `most` is the levels there are of each irrep."""
+    return bool(possible_levels(into, electrons, most, limit=1))
+
+
+def open_levels(
+    into: Correlation, alpha: Mapping[str, int], beta: Mapping[str, int], most: Mapping[str, int] | None = None
+) -> tuple[OpenLevel, ...]:
+    """Return the ways to read an occupation with one degenerate level partly filled; empty where there is none.
+
+    Parameters
+    ----------
+    into : electrons per level, as `electron_correlation` gives them.
+    alpha, beta : electrons of each spin by irrep of the deck's group.
+    most : the levels there are of each irrep of the full group; None where that is unknown.
+
+    An occupation that fills whole levels needs no such reading; ask `fills_whole_levels` first.
+    """
+    alpha_parts, beta_parts = (dict(_parts(into, counts, most)) for counts in (alpha, beta))
+    found = []
+    for irrep in into:
+        for first, second in itertools.product(alpha_parts.get(irrep, ()), beta_parts.get(irrep, ())):
+            if first or second:
+                found.append(OpenLevel(irrep, sum(into[irrep].values()), first, second))
+    return tuple(sorted(found, key=lambda level: (level.dimension, level.n_electrons)))
+
+
+def _parts(
+    into: Correlation, counts: Mapping[str, int], most: Mapping[str, int] | None
+) -> Iterator[tuple[str, list[dict[str, int]]]]:
+    """Yield for each degenerate irrep the parts of a level of it, without which the rest fills whole levels."""
+    whole = fills_whole_levels(into, counts, most)
+    for irrep, level in into.items():
+        if sum(level.values()) == 1 or (most is not None and most.get(irrep, 0) < 1):
+            continue
+        if whole:
+            yield irrep, [{}]
+            continue
+        fitting = [
+            part
+            for part in _proper_parts(level)
+            if fills_whole_levels(into, _without(counts, part), _one_less(most, irrep))
+        ]
+        if fitting:
+            yield irrep, fitting
+
+
+def _proper_parts(level: Mapping[str, int]) -> Iterator[dict[str, int]]:
+    for numbers in itertools.product(*(range(n + 1) for n in level.values())):
+        if 0 < sum(numbers) < sum(level.values()):
+            yield {name: n for name, n in zip(level, numbers, strict=True) if n}
+
+
+def _without(counts: Mapping[str, int], part: Mapping[str, int]) -> dict[str, int]:
+    return {name: counts.get(name, 0) - part.get(name, 0) for name in {**counts, **part}}
+
+
+def _one_less(most: Mapping[str, int] | None, irrep: str) -> dict[str, int] | None:
+    return None if most is None else {**most, irrep: most.get(irrep, 0) - 1}
+
+
+def terms_of(group: str, level: OpenLevel) -> tuple[str, ...]:
+    """Return the terms that a determinant with such an open level may belong to, the highest multiplicity first.
+
+    They are named ``3Σg-``, ``1Δg``, ``1Σg+``. With n more electrons of one spin than of the other, no term has a
+    lower multiplicity than n + 1; where both spins fill the same orbitals it is a singlet.
+    """
+    terms = terms_of_levels(group, {level.irrep: level.n_electrons})
+    lowest = abs(level.n_alpha - level.n_beta) + 1
+    highest = 1 if dict(level.alpha) == dict(level.beta) else level.n_electrons + 1
+    named = sorted((term for term in terms if lowest <= term[0] <= highest), key=lambda term: -term[0])
+    return tuple(f"{multiplicity}{irrep}" for multiplicity, irrep in named)
+
+
+def is_pure(group: str, level: OpenLevel) -> bool:
+    """Tell whether every determinant with such an open level belongs to one term, whichever partner is filled.
+
+    So it is where one spin fills the level wholly or not at all, and the states of the other span one irrep.
+    """
+    partial = [n for n in (level.n_alpha, level.n_beta) if 0 < n < level.dimension]
+    return len(partial) < 2 and all(len(exterior_power(group, level.irrep, n)) == 1 for n in partial)
+
+
+def state_irreps(group: str, unpaired: Mapping[str, int], one_level: bool = True) -> frozenset[str]:
+    """Return the irreps that a state with so many unpaired electrons of one spin can have.
+
+    Parameters
+    ----------
+    group : the group in which the occupation is given.
+    unpaired : unpaired electrons by irrep.
+    one_level : whether those of a degenerate irrep share one level if it holds them; else any levels are allowed.
+
+    Raises ValueError for an irrep that the group does not have.
+    """
+    irreps = known_group(group).irreps
+    dimensions = {irrep.name: irrep.dimension for irrep in irreps}
+    found = {irreps[0].name}
+    for irrep, n in unpaired.items():
+        if irrep not in dimensions:
+            raise ValueError(f"{group} has no irrep {irrep!r}")
+        if dimensions[irrep] == 1:
+            factors = set(product(group, *[irrep] * (n % 2)))
+        elif one_level and n <= dimensions[irrep]:
+            factors = set(exterior_power(group, irrep, n))
+        else:
+            factors = set(product(group, *[irrep] * n))
+        found = {name for a in found for b in factors for name in product(group, a, b)}
+    return frozenset(found)
+
+
+def missing_partners(into: Correlation, roots: Mapping[str, int]) -> tuple[dict[str, int], ...]:
+    """Return the fewest further states by irrep that make whole degenerate states of those asked for.
+
+    Parameters
+    ----------
+    into : the correlation of the full group with the deck's, of states (all irreps).
+    roots : states asked for by irrep of the deck's group.
+
+    Returns the smallest additions, several where they tie; empty where nothing is missing or nothing helps.
+    """
+    if possible_levels(into, roots, limit=1):
+        return ()
+    names = list(dict.fromkeys(name for row in into.values() for name in row))
+    largest = max(sum(row.values()) for row in into.values()) - 1
+    for n_more in range(1, min(largest, MOST_PARTNERS) + 1):
+        found = []
+        for chosen in itertools.combinations_with_replacement(names, n_more):
+            added = {name: chosen.count(name) for name in dict.fromkeys(chosen)}
+            total = {name: roots.get(name, 0) + added.get(name, 0) for name in {**roots, **added}}
+            if possible_levels(into, total, limit=1):
+                found.append(added)
+        if found:
+            return tuple(found)
+    return ()
