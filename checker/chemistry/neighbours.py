@@ -43,6 +43,7 @@ def neighbour_pairs(coordinates: Floats, cutoff: float) -> tuple[Ints, Floats]:
     ------
     NotDerivable
         If the atoms lie so dense that the list would not fit in memory.
+
     """
     points = np.ascontiguousarray(coordinates, dtype=np.float64).reshape(-1, 3)
     if len(points) <= _SMALL_ATOMS:
@@ -139,5 +140,7 @@ def _refuse_heap(tree: object, points: Floats, cutoff: float) -> None:
         chunk = sample[start : start + _CHUNK_ATOMS]
         total += int(np.sum(tree.query_ball_point(chunk, cutoff, return_length=True)))  # type: ignore[attr-defined]
         if total > NEIGHBOURS_PER_ATOM_LIMIT * len(sample):
-            because = f"more than {NEIGHBOURS_PER_ATOM_LIMIT} atoms on average within {cutoff:.2f} angstrom of each atom"
+            because = (
+                f"more than {NEIGHBOURS_PER_ATOM_LIMIT} atoms on average within {cutoff:.2f} angstrom of each atom"
+            )
             raise NotDerivable(because)
