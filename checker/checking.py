@@ -4,6 +4,7 @@ import re
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
 from itertools import islice
+from pathlib import Path
 from typing import BinaryIO
 
 from checker import api, output
@@ -117,7 +118,8 @@ def apply_and_check(asked: Wish) -> Outcome:
     if reports[0].verdict is Verdict.UNREADABLE:
         return check(replace(asked, apply=None))  # shows what is unreadable
     assert asked.apply is not None
-    written = apply_repair(reports[0], asked.apply, asked.fill_in)
+    path = asked.decks[0] if Path(asked.decks[0]).is_file() else reports[0].deck  # a folder may hold the one deck
+    written = apply_repair(path, reports[0], asked.apply, asked.fill_in)
     output.to_stderr(f"repair {asked.apply} written into {', '.join(written.files)}: {written.say}")
     return check(replace(asked, apply=None, fill_in=written.fill_in))
 

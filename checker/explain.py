@@ -80,7 +80,7 @@ def _manual(rule: Rule, width: int) -> str:
 
 
 def _reflowed(paragraph: str, width: int) -> str:
-    """Fill a paragraph to the width; an entry such as "Passes: ..." and an indented line begin a line of their own."""
+    """Fill a paragraph to the width; entries such as "Passes: ..." and indented lines begin lines of their own."""
     entries: list[str] = []
     for line in paragraph.splitlines():
         if entries and not _ENTRY.match(line):

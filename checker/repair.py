@@ -31,20 +31,22 @@ class _Change:
     after: bytes
 
 
-def apply_repair(report: DeckReport, number: int, fill_in: FillIn) -> Written:
-    """Write repair `number` of the report into its deck; edits of atoms go to the file that holds them.
+def apply_repair(path: str, report: DeckReport, number: int, fill_in: FillIn) -> Written:
+    """Write repair `number` of the report into the deck at `path`; edits of atoms go to the file that holds them.
 
     Raises RepairRefused, with the reason and the way out, where that cannot be done; every file is then as it was.
     """
     repair = _numbered(report, number)
-    changes = [_change(file, edits) for file, edits in _by_file(report, repair).items()]
+    atoms_file = path if report.atoms_file in {None, report.deck} else str(report.atoms_file)
+    _refuse_to_renumber(path, repair, fill_in)
+    changes = [_change(file, edits) for file, edits in _by_file(path, atoms_file, repair).items()]
     left = _without_edited(fill_in, repair)
     done: list[_Change] = []
     try:
         for change in changes:
             _write(change.path, change.after)
             done.append(change)
-        _insist_on_readable(report.deck, left)
+        _insist_on_readable(path, left)
     except BaseException:
         for change in done:
             _write(change.path, change.before)
@@ -64,14 +66,32 @@ def _numbered(report: DeckReport, number: int) -> Repair:
     return repairs[number]
 
 
-def _by_file(report: DeckReport, repair: Repair) -> dict[str, list[Edit]]:
+def _refuse_to_renumber(path: str, repair: Repair, fill_in: FillIn) -> None:
+    """Refuse to take an atom out where the deck names later atoms by their numbers."""
+    gone = [int(edit.key[len(ATOM_KEY) : -1]) for edit in repair.edits if _is_atom(edit) and edit.value is None]
+    if not gone:
+        return
+    for read in read_paths([path], fill_in=fill_in):
+        if isinstance(read, UnreadableDeck):
+            continue
+        named = [*read.job.species.ghost_atoms, *(n for fragment in read.job.fragments for n in fragment.atoms)]
+        if any(number > min(gone) for number in named):
+            raise RepairRefused(
+                f"{path} names atoms by number in ghost_atoms or fragments, and taking atom {min(gone) + 1} out "
+                "would shift them; make this change by hand"
+            )
+
+
+def _is_atom(edit: Edit) -> bool:
+    return edit.key.startswith(ATOM_KEY)
+
+
+def _by_file(path: str, atoms_file: str, repair: Repair) -> dict[str, list[Edit]]:
     """Group the edits by the file they go to, keeping their order."""
     by_file: dict[str, list[Edit]] = {}
-    atoms_file = report.atoms_file or report.deck
     for edit in repair.edits:
-        of_atom = edit.key.startswith(ATOM_KEY)
-        to_comment = not of_atom and atoms_file != report.deck and _only_in_comment(report.deck, atoms_file, edit)
-        by_file.setdefault(atoms_file if of_atom or to_comment else report.deck, []).append(edit)
+        goes_along = _is_atom(edit) or (atoms_file != path and _only_in_comment(path, atoms_file, edit))
+        by_file.setdefault(atoms_file if goes_along else path, []).append(edit)
     return by_file
 
 

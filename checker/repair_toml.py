@@ -68,12 +68,27 @@ def _edited(text: str, edit: Edit) -> str:
         return beside_charge
     document = tomlkit.parse(text)
     holder: Any = document
-    for step in steps[:-1]:
-        if isinstance(step, str) and step not in holder:
-            holder[step] = tomlkit.table() if holder is document else tomlkit.inline_table()
+    value = edit.value
+    for depth, step in enumerate(steps[:-1]):
+        if isinstance(step, str) and step not in holder and holder is document:
+            holder[step] = tomlkit.table()
+        elif isinstance(step, str) and step not in holder and value is not None:
+            value = _nested(steps[depth + 1 :], value)
+            steps = steps[: depth + 1]
+            break
         holder = holder[step]
-    change(holder, steps[-1:], None) if edit.value is None else _put(holder, steps[-1], edit.value)
+    if value is None:
+        change(holder, steps[-1:], None)
+    else:
+        _put(holder, steps[-1], value)
     return tomlkit.dumps(document)
+
+
+def _nested(steps: tuple[str | int, ...], value: Json) -> Json:
+    """Return the value inside tables of its own, one for each step."""
+    for step in reversed(steps):
+        value = {str(step): value}
+    return value
 
 
 def _put(holder: Any, last: str | int, value: Json) -> None:
@@ -84,8 +99,6 @@ def _put(holder: Any, last: str | int, value: Json) -> None:
     item = tomlkit.value((in_style_of(template, value) if is_row else None) or toml_value(value))
     if isinstance(last, int) and last >= len(holder):
         holder.append(item)
-    elif isinstance(value, dict) and isinstance(last, str):
-        holder[last] = value  # a whole table
     else:
         holder[last] = item
 

@@ -132,6 +132,9 @@ def _run_line(run: _Run, page: Page) -> str:
     if run.n > 1:
         name += f" to #{run.last.deck.rpartition('#')[2]}, {run.n} frames"
     rules = _spoken(report) if report.verdict is not Verdict.UNREADABLE else [_first_complaint(report)]
+    n_accepted = sum(finding.accepted is not None for finding in report.findings)
+    if n_accepted and run.n == 1:
+        rules.append(f"{n_accepted} accepted")
     label = f"{page.mark(report.verdict)} {report.verdict}"
     style = verdict_style(report.verdict) if report.verdict is not Verdict.CLEAR else ""
     return page.line(
