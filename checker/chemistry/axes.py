@@ -19,6 +19,9 @@ EXACT = 1e-6
 CLOSE_TO_AXIS = 0.999
 """Cosine of the angle, about 2.5 degrees, within which an axis is taken to be meant along a coordinate axis."""
 
+EXCHANGES_IN_TURN = np.eye(3)[[[0, 1, 2], [2, 0, 1], [1, 2, 0]]]
+"""(3, 3, 3) rotations that leave the coordinate axes, or exchange them in turn."""
+
 
 @dataclass(frozen=True, eq=False)
 class _Marks:
@@ -144,9 +147,8 @@ def _nearest_frame(standard: Floats, direction: Floats) -> Floats:
 
     Where the direction is close to one of the body's axes, these are first exchanged in turn.
     """
-    turns = [np.roll(np.eye(3), k, axis=0) for k in range(3)]
-    close = [turn for turn in turns if standard @ turn @ direction > CLOSE_TO_AXIS]
-    exchange = close[0] if close else turns[0]
+    close = np.flatnonzero(standard @ EXCHANGES_IN_TURN @ direction > CLOSE_TO_AXIS)
+    exchange = EXCHANGES_IN_TURN[close[0] if len(close) else 0]
     return np.asarray(_shortest_turn(exchange @ direction, standard) @ exchange)
 
 

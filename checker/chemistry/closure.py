@@ -12,7 +12,6 @@ from functools import cached_property
 import numpy as np
 
 from checker.chemistry.bodies import Floats, Ints
-from checker.chemistry.irreps import MAX_AXIS
 
 
 @dataclass(frozen=True, eq=False)
@@ -111,7 +110,7 @@ def _generated(generators: tuple[Element, ...], inside: Closed, most: int) -> Cl
 
 
 def symbol_of(group: Closed, traces: Floats) -> str | None:
-    """Return the Schoenflies symbol; None if it is no point group with axes that are listed.
+    """Return the Schoenflies symbol, None if it is no point group; an axis may be higher than are listed.
 
     Parameters
     ----------
@@ -125,7 +124,7 @@ def symbol_of(group: Closed, traces: Floats) -> str | None:
     n_improper = len(group) - n_rotations
     twofold = ~rotations & (orders == 2)
     n_planes, n_centres = int((twofold & (traces > -1.0)).sum()), int((twofold & (traces <= -1.0)).sum())
-    if n_improper not in (0, n_rotations) or highest > MAX_AXIS:
+    if n_improper not in (0, n_rotations):
         return None
     if highest == n_rotations:
         return _axial(highest, n_improper > 0, n_planes, n_centres)

@@ -15,6 +15,7 @@ import numpy as np
 from checker.chemistry.axes import best_placement
 from checker.chemistry.bodies import Body, Floats, Ints, best_matrices
 from checker.chemistry.closure import Closed, symbol_of
+from checker.chemistry.irreps import point_group
 from checker.chemistry.point_groups import standard_operations
 
 ROUNDS = 2
@@ -44,13 +45,13 @@ class Fit:
 
 
 def fitted(body: Body, group: Closed) -> Fit | None:
-    """Fit the exact group to a body that is no line; None if the permutations belong to no point group."""
+    """Fit the exact group to a body that is no line; None if the permutations belong to none that is listed."""
     if len(group) == 1:
         return Fit("C1", group, np.eye(3)[None], group.permutations, body.positions, 0.0)
     targets = body.positions[group.permutations]
     rough = best_matrices(body.positions, targets, group.handedness)
     symbol = symbol_of(group, np.trace(rough, axis1=1, axis2=2))
-    if symbol is None:
+    if symbol is None or point_group(symbol) is None:
         return None
     frame = best_placement(rough, group.handedness, group.orders, symbol)
     if frame is None:

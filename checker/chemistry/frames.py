@@ -14,7 +14,7 @@ from itertools import permutations, product
 
 import numpy as np
 
-from checker.chemistry.axes import CLOSE_TO_AXIS, EXACT
+from checker.chemistry.axes import CLOSE_TO_AXIS, EXACT, EXCHANGES_IN_TURN
 from checker.chemistry.bodies import Floats, Ints
 from checker.chemistry.point_groups import family_of, indices_of, standard_operations
 
@@ -125,8 +125,8 @@ def _recommended(symbol: str, found: Floats, positions: Floats) -> Floats:
 
 def _nearest_to_given(found: Floats) -> Floats:
     """Choose the coordinates' own axes, else these exchanged in turn, else the least turn; ties by the numbers."""
-    for k in range(3):
-        cosines = 0.5 * (np.einsum("mij,ij->m", found, np.roll(np.eye(3), k, axis=0)) - 1.0)
+    for exchange in EXCHANGES_IN_TURN:
+        cosines = 0.5 * (np.einsum("mij,ij->m", found, exchange) - 1.0)
         if cosines.max() > CLOSE_TO_AXIS:
             return np.asarray(found[cosines.argmax()])
     traces = np.trace(found, axis1=1, axis2=2)
