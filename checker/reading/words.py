@@ -1,8 +1,7 @@
 """Turns of phrase that the complaints share. Whatever is quoted is shortened and made printable."""
 
 import datetime
-import difflib
-import re
+import os
 from collections.abc import Iterable, Mapping, Sequence
 
 LONGEST_QUOTE = 40
@@ -65,6 +64,8 @@ def listed(items: Iterable[str], last: str = "or") -> str:
 
 def nearest(word: str, choices: Sequence[str], cutoff: float = 0.6) -> str | None:
     """Return the choice that a word was probably meant to be, case ignored, or None."""
+    import difflib
+
     by_lower = {choice.lower(): choice for choice in choices}
     # a long word resembles nothing, and comparing it would cost seconds
     close = difflib.get_close_matches(word[:64].lower(), by_lower, n=1, cutoff=cutoff)
@@ -82,13 +83,4 @@ def plural(n: int, word: str) -> str:
 
 def shown_path(path: str) -> str:
     """Return a path as it is named in reports: with forward slashes on every system, and printable."""
-    return printable(re.sub(r"\\", "/", path) if _BACKSLASH_SEPARATES else path)
-
-
-def _backslash_separates() -> bool:
-    import os
-
-    return os.sep == "\\"
-
-
-_BACKSLASH_SEPARATES = _backslash_separates()
+    return printable(path.replace(os.sep, "/"))

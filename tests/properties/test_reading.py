@@ -21,7 +21,7 @@ from checker.reading.shape import build
 from checker.reading.xyz_rows import _read_at_once, _read_one_by_one
 
 # a third of what the profile says, as these cases cost more than arbitrary bytes
-EXAMPLES = settings.default.max_examples // 3
+EXAMPLES = settings().max_examples // 3
 NAMES = ("a.deck.toml", "a.deck.json", "a.xyz", "-")
 KEYS = (
     "species.charge",

@@ -15,6 +15,7 @@ from decks_as_text import ATOMS, FRAME, HEAD
 from checker.deck import Deck, UnreadableDeck
 from checker.reading import FillIn, read_paths, read_text
 
+NOTHING = FillIn()
 Workplace = Callable[[dict[str, str]], Path]
 
 
@@ -34,17 +35,17 @@ def workplace(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Workplace:
     return make
 
 
-def found(*paths: str, stdin: bytes = b"", **fill_in: int) -> list[Deck | UnreadableDeck]:
-    return list(read_paths(paths, fill_in=FillIn(**fill_in), stdin=BytesIO(stdin)))
+def found(*paths: str, stdin: bytes = b"", fill_in: FillIn = NOTHING) -> list[Deck | UnreadableDeck]:
+    return list(read_paths(paths, fill_in=fill_in, stdin=BytesIO(stdin)))
 
 
-def sentences(*paths: str, **fill_in: int) -> list[str]:
-    items = found(*paths, **fill_in)
+def sentences(*paths: str, fill_in: FillIn = NOTHING) -> list[str]:
+    items = found(*paths, fill_in=fill_in)
     return [str(c) for item in items for c in (item.complaints if isinstance(item, UnreadableDeck) else ())]
 
 
-def names(*paths: str, **fill_in: int) -> list[str]:
-    return [item.name for item in found(*paths, **fill_in)]
+def names(*paths: str, fill_in: FillIn = NOTHING) -> list[str]:
+    return [item.name for item in found(*paths, fill_in=fill_in)]
 
 
 DECK = HEAD + ATOMS
@@ -99,7 +100,7 @@ def test_a_folder_means_its_decks_in_stable_order(workplace: Workplace) -> None:
     Path("set/linked").symlink_to("a")
     assert names("set") == ["set/a.xyz", "set/a/deep.deck.json", "set/m.deck.toml", "set/z.deck.toml"]
     assert names("set/") == names("set")
-    assert "set/uncharged.xyz" in names("set", charge=0)
+    assert "set/uncharged.xyz" in names("set", fill_in=FillIn(charge=0))
     assert [name for name in names(".") if "/a" in name] == ["set/a.xyz", "set/a/deep.deck.json"]
 
 
@@ -205,7 +206,7 @@ class TestGeometryFile:
             "a.deck.toml:2:2: neither the deck nor the comment line of its geometry file states a charge; add the total "
             "charge, such as charge = 0, to [species]"
         ]
-        assert sentences("a.deck.toml", charge=0) == []
+        assert sentences("a.deck.toml", fill_in=FillIn(charge=0)) == []
 
     @pytest.mark.parametrize(
         ("written", "why"),
@@ -300,7 +301,7 @@ class TestFillIn:
         self, text: str, name: str, **fill_in: int
     ) -> tuple[int, int | None, list[tuple[str, int, str]]]:
         Path(name).write_text(text)
-        (deck,) = found(name, **fill_in)
+        (deck,) = found(name, fill_in=FillIn(**fill_in))
         assert isinstance(deck, Deck), deck
         species = deck.job.species
         return species.charge, species.multiplicity, [(a.key, a.value, a.said_in) for a in deck.asides]
