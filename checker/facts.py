@@ -25,7 +25,9 @@ if TYPE_CHECKING:
     from checker.chemistry.irreps import PointGroup
     from checker.chemistry.job_basis import JobBasis
     from checker.chemistry.parity import Cause
+    from checker.chemistry.symmetry import Symmetry
     from checker.chemistry.valence import Valence
+    from checker.irrep_facts import IrrepFacts
 
 UNSTATED_MULTIPLICITY = "the deck states no multiplicity"
 
@@ -283,6 +285,23 @@ class Facts:
         if group is None:
             raise NotDerivable(f"there is no point group {written!r}")
         return group
+
+    @cached_property
+    def symmetry(self) -> "Symmetry":
+        """The geometry's point group and frame, ghosts told from atoms; not derivable where it cannot be settled."""
+        from checker.chemistry.symmetry import find_symmetry
+
+        stated = self.job.symmetry
+        kinds = 2 * self.numbers + self.is_ghost
+        choice = "C2v" if stated.point_group and stated.point_group.strip().casefold() == "c2v" else "D2"
+        return find_symmetry(kinds, self.coordinates, axes=stated.axes, abelian_choice=choice)
+
+    @cached_property
+    def irreps(self) -> "IrrepFacts":
+        """What the deck states by irrep, seen from the geometry's symmetry."""
+        from checker.irrep_facts import IrrepFacts
+
+        return IrrepFacts(self)
 
     @cached_property
     def expected(self) -> Expected:

@@ -11,7 +11,7 @@ FLOOR = {
     "checker.geometry": 0, "checker.tables": 0,
     "checker.model": 1, "checker.deck": 1, "checker.reading": 1,
     "checker.chemistry": 2,
-    "checker.facts": 3, "checker.registry": 3,
+    "checker.facts": 3, "checker.irrep_facts": 3, "checker.registry": 3,
     "rules": 4,
     "checker.engine": 5, "checker.report": 5,
     "checker.api": 6, "checker.repair": 6, "checker.explain": 6, "checker.cli": 7, "checker.__main__": 8,
