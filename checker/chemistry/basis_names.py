@@ -10,7 +10,7 @@ import re
 from collections.abc import Iterable
 from dataclasses import dataclass
 
-__all__ = ["Polarized", "key_of", "keys_of", "loose_key_of", "nearest_keys", "read_polarized"]
+__all__ = ["LONGEST", "Polarized", "key_of", "keys_of", "loose_key_of", "nearest_keys", "read_polarized"]
 
 _WITHOUT_MEANING = re.compile(r"[\s\-_/‐-―−]+")
 _ONE_SPELLING = str.maketrans({"[": "(", "]": ")", "{": "(", "}": ")", "∗": "*", "＋": "+"})
@@ -21,7 +21,7 @@ _SV_P = re.compile(r"sv_p(?![a-z])_?")
 _TIGHT_D = re.compile(r"pv([dtq5])z\+d(?![a-z])")
 _POLARIZED = re.compile(r"(6311?\+{0,2}g)\(([2-9]?d)([2-9]?f)?(?:,([2-9]?p)([2-9]?d)?)?\)")
 _LIKENESS = 0.6
-_LONGEST = 60  # characters of a name that are compared; published ones have half of that
+LONGEST = 60  # characters of a name that are compared; published ones have half of that
 
 
 @dataclass(frozen=True, slots=True)
@@ -89,6 +89,6 @@ def nearest_keys(key: str, known: Iterable[str], limit: int) -> list[str]:
     """Return the known keys most like a key, best first: those that go on from it, then those spelled alike."""
     from difflib import get_close_matches
 
-    key, listed = key[:_LONGEST], list(known)
+    key, listed = key[:LONGEST], list(known)
     longer = sorted((other for other in listed if key and other.startswith(key)), key=len)
     return list(dict.fromkeys([*longer, *get_close_matches(key, listed, limit, _LIKENESS)]))[:limit]

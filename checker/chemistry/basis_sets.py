@@ -14,7 +14,15 @@ from functools import cache, cached_property, lru_cache
 from types import MappingProxyType
 from typing import Literal
 
-from checker.chemistry.basis_names import Polarized, key_of, keys_of, loose_key_of, nearest_keys, read_polarized
+from checker.chemistry.basis_names import (
+    LONGEST,
+    Polarized,
+    key_of,
+    keys_of,
+    loose_key_of,
+    nearest_keys,
+    read_polarized,
+)
 from checker.tables.basis_sets import BasisSetRow, basis_set_rows
 
 __all__ = [
@@ -210,7 +218,7 @@ def nearest_set_with(name: str, z: int) -> str | None:
 def _alike_with(key: str, z: int, role: str) -> str | None:
     from difflib import SequenceMatcher
 
-    matcher = SequenceMatcher(b=key)
+    matcher = SequenceMatcher(b=key[:LONGEST])
     best, likeness = None, _LIKE_ENOUGH
     for other, position in _by_key().items():
         if position[0].role != role:

@@ -1,15 +1,14 @@
 """The table of basis sets, read on first use; a set's contents are unpacked when they are asked for."""
 
-from dataclasses import dataclass
 from functools import cache
 from importlib.resources import files
+from typing import NamedTuple
 
 __all__ = ["BasisSetRow", "basis_set_rows"]
 
 
-@dataclass(frozen=True, slots=True)
-class BasisSetRow:
-    """A set of the catalogue; see the head of ``basis_sets.csv``.
+class BasisSetRow(NamedTuple):
+    """A set of the catalogue (a tuple, as hundreds are made in a millisecond); see the head of ``basis_sets.csv``.
 
     Attributes
     ----------
