@@ -9,6 +9,7 @@ import typer
 
 from checker import __version__
 from checker.errors import HundsightError, UnreadableInput
+from checker.output import ReaderLeft
 
 CLEAN, STOPPED, UNREADABLE, FAULT, INTERRUPTED = 0, 1, 2, 3, 130
 PROGRAM = "hundsight"
@@ -72,7 +73,7 @@ def main() -> None:
 
 
 def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
-    """Run the command line on the arguments and return the exit status; nothing escapes but SystemExit of --help.
+    """Run the command line on the arguments and return the exit status; nothing escapes but SystemExit of shell completion.
 
     Parameters
     ----------
@@ -82,10 +83,9 @@ def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
     try:
         command = typer.main.get_command(app)
         status = command.main(list(argv) or ["--help"], prog_name=PROGRAM, standalone_mode=False, obj=stdin)
-        sys.stdout.flush()
     except KeyboardInterrupt:
         return INTERRUPTED
-    except BrokenPipeError:
+    except ReaderLeft:
         _close_quietly()
         return INTERRUPTED
     except UnreadableInput as unreadable:

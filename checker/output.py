@@ -16,6 +16,10 @@ from checker.report.plain import plain
 PLAIN_WIDTH = 80
 
 
+class ReaderLeft(HundsightError):
+    """The program that read our output through a pipe wants no more of it."""
+
+
 def text_width() -> int:
     """Return the width of the terminal; of a pipe what COLUMNS says, else 80."""
     return shutil.get_terminal_size((PLAIN_WIDTH, 24)).columns
@@ -47,16 +51,27 @@ def progress(n_files: int, *, quiet: bool) -> Progress:
 
 
 def to_stdout(pieces: Iterable[str], progress: Progress | None = None) -> None:
-    """Write pieces to standard output as they come; what its encoding lacks is written out as an escape."""
-    stream = sys.stdout
-    encoding = getattr(stream, "encoding", None) or "utf-8"
+    """Write pieces to standard output as they come; what its encoding lacks is written out as an escape.
+
+    Raises ReaderLeft where the other end of a pipe is closed.
+    """
+    encoding = getattr(sys.stdout, "encoding", None) or "utf-8"
     for piece in pieces:
         if progress is not None:
             progress.hide()
-        stream.write(piece if piece.isascii() else piece.encode(encoding, "backslashreplace").decode(encoding))
+        _put(piece if piece.isascii() else piece.encode(encoding, "backslashreplace").decode(encoding))
     if progress is not None:
         progress.hide()
-    stream.flush()
+    _put("", flush=True)
+
+
+def _put(text: str, *, flush: bool = False) -> None:
+    try:
+        sys.stdout.write(text)
+        if flush:
+            sys.stdout.flush()
+    except BrokenPipeError:
+        raise ReaderLeft from None
 
 
 def to_file(file: str, pieces: Iterable[str], progress: Progress | None = None) -> None:

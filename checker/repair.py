@@ -67,15 +67,17 @@ def _numbered(report: DeckReport, number: int) -> Repair:
 
 
 def _refuse_to_renumber(path: str, repair: Repair, fill_in: FillIn) -> None:
-    """Refuse to take an atom out where the deck names later atoms by their numbers."""
+    """Refuse to take an atom out where the deck names later ones by number and the repair does not see to that."""
     gone = [int(edit.key[len(ATOM_KEY) : -1]) for edit in repair.edits if _is_atom(edit) and edit.value is None]
     if not gone:
         return
     for read in read_paths([path], fill_in=fill_in):
         if isinstance(read, UnreadableDeck):
             continue
-        named = [*read.job.species.ghost_atoms, *(n for fragment in read.job.fragments for n in fragment.atoms)]
-        if any(number > min(gone) for number in named):
+        lists = {f"fragments[{i}].atoms": fragment.atoms for i, fragment in enumerate(read.job.fragments)}
+        lists["species.ghost_atoms"] = read.job.species.ghost_atoms
+        seen_to = {edit.key for edit in repair.edits}
+        if any(number > min(gone) for key, named in lists.items() if key not in seen_to for number in named):
             raise RepairRefused(
                 f"{path} names atoms by number in ghost_atoms or fragments, and taking atom {min(gone) + 1} out "
                 "would shift them; make this change by hand"

@@ -432,6 +432,18 @@ class TestApply:
         with pytest.raises(RepairRefused, match="would shift them"):
             repair(deck)
 
+    def test_an_atom_is_taken_out_where_the_repair_sees_to_the_numbers(
+        self, tmp_path: Path, repairs: list[Repair]
+    ) -> None:
+        """Then the numbers are right afterwards."""
+        deck = tmp_path / "a.deck.toml"
+        deck.write_text(TOML.replace("charge = 0", "ghost_atoms = [3]\ncharge = 0"))
+        repairs.append(Repair("x", (Edit("species.atoms[1]", None), Edit("species.ghost_atoms", [2]))))
+
+        repair(deck)
+
+        assert "ghost_atoms = [2]\n" in deck.read_text()
+
     def test_a_link_is_followed_within_its_folder(self, tmp_path: Path, repairs: list[Repair]) -> None:
         """The link stays a link, and the file it leads to is mended."""
         (tmp_path / "real.deck.toml").write_text(TOML)
