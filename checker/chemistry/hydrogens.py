@@ -7,12 +7,15 @@ the edit, and how well the geometry speaks for it (0 to about 1.2).
 from dataclasses import dataclass, replace
 
 from checker.chemistry.lewis import CHALCOGENS, HALOGENS, PNICTOGENS
-from checker.chemistry.vacancy import hydrogen_site, vacancy
+from checker.chemistry.vacancy import has_twin, hydrogen_site, vacancy
 from checker.chemistry.valence import Kind, Site, Tally, Valence
 
 MOST_CANDIDATES = 5
 LEAST_ROOM = 0.40
 """An atom of a multiple bond is a candidate only where the geometry leaves this much room for a hydrogen."""
+
+ALIKE = 0.4
+"""The oxygens of an oxo-anion are alike; had one lost a hydrogen, its bond would be the longer."""
 
 _MOST_LOOKED_AT = 400
 _COUNTS = {
@@ -56,14 +59,15 @@ def surplus_hydrogens(valence: Valence) -> list[HydrogenEdit]:
 
 
 def _room(valence: Valence, atom: int) -> float:
-    return vacancy(atom, valence.lewis.numbers, valence.lewis.coordinates, valence.bonds)
+    room = vacancy(atom, valence.lewis.numbers, valence.lewis.coordinates, valence.bonds)
+    return room * ALIKE if has_twin(atom, valence.lewis.numbers, valence.bonds) else room
 
 
 def _on_open_sites(valence: Valence) -> dict[int, tuple[float, Tally]]:
     """Open atoms, and those that the open valence could be shifted to along the multiple bonds."""
     found: dict[int, tuple[float, Tally]] = {}
     for site in valence.sites[:_MOST_LOOKED_AT]:
-        if site.kind not in _COUNTS:
+        if site.kind not in _COUNTS or (site.kind is Kind.ANION and site.atom in valence.bonds.contacts):
             continue
         tally = _closed_by_one(valence, site)
         places = valence.lewis.pairing.alternatives(site.atom) if site.atom in valence.lewis.open else (site.atom,)
@@ -78,6 +82,7 @@ def _closed_by_one(valence: Valence, site: Site) -> Tally:
     """Return the tally after a hydrogen has taken one open valence of this site."""
     name = _COUNTS[site.kind]
     tally = replace(valence.tally, **{name: getattr(valence.tally, name) - 1})
+    tally = replace(tally, oxo_anions=min(tally.oxo_anions, tally.anions))
     if site.kind is Kind.CARBENE:
         return _opened(valence, tally, site.atom)
     return tally

@@ -15,6 +15,8 @@ CHARGE_WEIGHTS = (1.0, 0.35, 0.12, 0.05, 0.02)
 """Of |charge| 0, 1, 2, 3 and more."""
 
 RADICAL_AT_LONE_PAIRS = 0.6
+RADICAL_AT_OXO_ANION = 0.15
+"""Carboxylates, nitrates and sulfates are met as anions; their radicals are rare."""
 RADICAL_AT_CARBON = 0.6
 RADICAL_AT_CATION = 0.25
 RADICAL_AT_METAL = 0.8
@@ -61,7 +63,8 @@ def _closures(tally: Tally) -> Iterator[Way]:
     """Yield the ways to close the sites; of many like sites, all are closed but for a few."""
     flexible = tally.flexible if tally.flexible <= _MOST_OPEN else tally.flexible % 2
     groups = (
-        _radicals(tally.anions, -1, RADICAL_AT_LONE_PAIRS),
+        _radicals(tally.anions - tally.oxo_anions, -1, RADICAL_AT_LONE_PAIRS),
+        _radicals(tally.oxo_anions, -1, RADICAL_AT_OXO_ANION),
         _radicals(tally.cations, 1, RADICAL_AT_CATION),
         _radicals(tally.subvalent, 1, RADICAL_AT_METAL),
         list(_either(flexible)),

@@ -5,7 +5,7 @@ tetrahedral) and to about one bond where one direction is empty. Bond lengths gi
 much of an atom's valence is used. Source of the bond radii: P. Pyykko and M. Atsumi, Chem. Eur. J. 15, 186 and
 12770 (2009). The scales are fitted to common geometries, no source.
 
-Provides `bond_order`, `direction_sum`, `vacancy` and `hydrogen_site`.
+Provides `bond_order`, `direction_sum`, `vacancy`, `has_twin` and `hydrogen_site`.
 """
 
 import math
@@ -23,6 +23,12 @@ LONE_PAIR_STRETCH_ANGSTROM = 0.10
 HYDROGEN_RADIUS_ANGSTROM = 0.32
 """Single-bond radius of hydrogen (Pyykko and Atsumi 2009)."""
 
+TWIN_ANGSTROM = 0.03
+"""Bonds that differ by less than this are alike."""
+
+LEAST_ORDER = 0.8
+"""A bond is a bond: however long, it uses this much of a valence."""
+
 LINEAR_SUM = 0.35
 """Two unit vectors that add up to less than this (160 degrees or more) leave no empty direction."""
 
@@ -30,7 +36,7 @@ _WITH_LONE_PAIRS = frozenset({7, 8, 9})
 
 
 def bond_order(first: int, second: int, length: float) -> float:
-    """Estimate a bond order, 0.5 to 3, from two atomic numbers and a length in angstrom.
+    """Estimate a bond order, 0.8 to 3, from two atomic numbers and a length in angstrom.
 
     Linear between the sums of the radii of single, double and triple bonds; 1 where no double bond is known.
     """
@@ -45,7 +51,7 @@ def bond_order(first: int, second: int, length: float) -> float:
         one += LONE_PAIR_STRETCH_ANGSTROM
     two = min(double + other_double, one - 0.05)
     if length >= two or triple is None or other_triple is None:
-        return min(3.0, max(0.5, 1.0 + (one - length) / (one - two)))
+        return min(3.0, max(LEAST_ORDER, 1.0 + (one - length) / (one - two)))
     three = min(triple + other_triple, two - 0.05)
     return min(3.0, 2.0 + (two - length) / (two - three))
 
@@ -86,11 +92,23 @@ def vacancy(atom: int, numbers: Ints, coordinates: Floats, bonds: Bonds) -> floa
     if degree > 3 or (degree == 3 and has_lone_pair):
         return 0.0
     if has_lone_pair or degree == 1:
-        return 0.12 + 0.9 * unused
+        return 0.06 + 0.85 * unused
     gap = math.hypot(*direction_sum(atom, coordinates, bonds))
     if degree == 2:
         return (0.03 if gap < LINEAR_SUM else 0.10) + (0.2 if gap < LINEAR_SUM else 0.9) * unused
     return 0.02 + min(1.0, (gap / 0.75) ** 2) * (0.6 + 0.4 * unused)
+
+
+def has_twin(atom: int, numbers: Ints, bonds: Bonds) -> bool:
+    """Say whether a terminal atom shares its centre with another of its element at the same distance."""
+    if len(bonds.neighbours[atom]) != 1 or numbers[atom] == 1:
+        return False
+    (centre,), (length,) = bonds.neighbours[atom], bonds.lengths[atom]
+    return any(
+        other != atom and numbers[other] == numbers[atom] and abs(distance - length) < TWIN_ANGSTROM
+        for other, distance in zip(bonds.neighbours[centre], bonds.lengths[centre], strict=True)
+        if len(bonds.neighbours[other]) == 1
+    )
 
 
 def hydrogen_site(atom: int, numbers: Ints, coordinates: Floats, bonds: Bonds) -> Floats:

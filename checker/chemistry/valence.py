@@ -16,6 +16,7 @@ import numpy as np
 from checker.chemistry.bonding import Bonds, perceive_bonds
 from checker.chemistry.lewis import CHALCOGENS, HALOGENS, PNICTOGENS, TETRELS, TRIELS, LewisStructure
 from checker.chemistry.neighbours import Floats, Ints
+from checker.chemistry.vacancy import has_twin
 from checker.elements import name_of
 from checker.tables.structure import ion_charges, is_covalent, usual_valences, valence_electrons
 
@@ -52,10 +53,14 @@ class Site:
 
 @dataclass(frozen=True, slots=True)
 class Tally:
-    """The sites of a structure, counted; `base` is the charge before any open valence is closed."""
+    """The sites of a structure, counted; `base` is the charge before any open valence is closed.
+
+    `oxo_anions` are those of the anions that share a centre with an atom of their kind, as in nitrate.
+    """
 
     base: int
     anions: int = 0
+    oxo_anions: int = 0
     flexible: int = 0
     cations: int = 0
     carbenes: int = 0
@@ -138,13 +143,13 @@ def assign_valences(
         open_valences[atom] = -surplus if _is_beyond(lewis, atom) else 0
     for site in sites:
         formal[site.atom] += site.charge
-    tally = _tally(sites, _paired_triplets(lewis))
+    tally = _tally(lewis, sites)
     because = _why_ambiguous(lewis, sites, np.arange(1, len(numbers) + 1) if numbering is None else numbering)
     implied = None if because else tally.lowest
     return Valence(lewis.bonds, lewis, open_valences, formal, sites, tally, implied, because)
 
 
-def _tally(sites: tuple[Site, ...], paired_triplets: int) -> Tally:
+def _tally(lewis: LewisStructure, sites: tuple[Site, ...]) -> Tally:
     counts = dict.fromkeys(Kind, 0)
     for site in sites:
         counts[site.kind] += 1
@@ -153,14 +158,20 @@ def _tally(sites: tuple[Site, ...], paired_triplets: int) -> Tally:
     return Tally(
         base=sum(site.charge for site in sites if site.kind in fixed),
         anions=counts[Kind.ANION],
+        oxo_anions=sum(1 for site in sites if site.kind is Kind.ANION and _is_oxo(lewis, site.atom)),
         flexible=counts[Kind.FLEXIBLE],
         cations=counts[Kind.CATION],
         carbenes=counts[Kind.CARBENE],
         subvalent=subvalent,
-        paired_triplets=paired_triplets,
+        paired_triplets=_paired_triplets(lewis),
         unknown=counts[Kind.UNKNOWN],
         beyond=counts[Kind.BEYOND],
     )
+
+
+def _is_oxo(lewis: LewisStructure, atom: int) -> bool:
+    neighbours = lewis.bonds.neighbours
+    return has_twin(atom, lewis.numbers, lewis.bonds) and len(neighbours[neighbours[atom][0]]) >= 3
 
 
 def _paired_triplets(lewis: LewisStructure) -> int:
