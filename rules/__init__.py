@@ -9,9 +9,12 @@ from rules import (
     closed_shell_treatment,
     core_potential_count,
     deck_unreadable,
+    electron_count,
     high_spin_default,
     isolated_atom,
     length_unit,
+    multiplicity_out_of_reach,
+    multiplicity_unstated,
     occupation_irreps,
     occupation_total,
     open_valence,
@@ -25,6 +28,9 @@ from rules import (
 ALL_RULES: tuple[Rule, ...] = (
     # electron books
     spin_parity.RULE,
+    electron_count.RULE,
+    multiplicity_unstated.RULE,
+    multiplicity_out_of_reach.RULE,
     core_potential_count.RULE,
     charge_structure.RULE,
     unbound_electrons.RULE,
