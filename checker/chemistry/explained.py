@@ -11,6 +11,9 @@ from checker.chemistry.valence import Kind, Tally, Valence
 ROOM_OF_A_LOST_ATOM = 0.75
 """Both ends of a bond of single length must have this much room before two lost hydrogens are suspected."""
 
+ROOM_OF_A_CATION = 0.5
+"""A carbenium ion is planar; an open atom with more room than this is none."""
+
 PI_BONDS_PER_PAIR = 4
 """A conjugated system of this many multiple bonds may take up or give away two electrons (cyclooctatetraene)."""
 
@@ -56,7 +59,7 @@ def unexplained_sites(valence: Valence, charge: int, multiplicity: int) -> Expla
     tally = valence.tally
     if tally.unknown or tally.beyond or tally.subvalent or valence.lewis.gave_up or valence.bonds.overlaps:
         return None
-    if tally.open and not _accounts_for(tally, charge, multiplicity - 1):
+    if tally.open and not _accounts_for(tally, charge, multiplicity - 1, ion_pairs=_may_be_ion_pairs(valence)):
         atoms = tuple(site.atom for site in valence.sites if site.kind in _OPEN_KINDS)
         roomiest = sorted(set(atoms), key=lambda atom: (-valence.lewis.room(atom), atom))
         why = "An open valence is an unpaired electron or a charge, and the stated ones do not suffice."
@@ -84,7 +87,13 @@ def charge_mismatch(valence: Valence, charge: int) -> ChargeMismatch | None:
     return ChargeMismatch(implied, from_bonding, sites, 0.85 if abs(electrons) > 1 else 0.75)
 
 
-def _accounts_for(tally: Tally, charge: int, unpaired: int) -> bool:
+def _may_be_ion_pairs(valence: Valence) -> bool:
+    """Open sites may close as cation and anion by turns, but not those that a hydrogen was taken from."""
+    flexible = (site.atom for site in valence.sites if site.kind is Kind.FLEXIBLE)
+    return all(valence.lewis.room(atom) < ROOM_OF_A_CATION for atom in flexible)
+
+
+def _accounts_for(tally: Tally, charge: int, unpaired: int, *, ion_pairs: bool) -> bool:
     """Try every number of sites closed as anions and as cations; one electron more or fewer is let pass."""
     sites = tally.open
     excess = charge - tally.base
@@ -92,6 +101,8 @@ def _accounts_for(tally: Tally, charge: int, unpaired: int) -> bool:
         for anions in range(min(tally.anions + tally.flexible, sites) + 1):
             cations = excess - spare + anions
             if not 0 <= cations <= tally.cations + tally.flexible or anions + cations > sites:
+                continue
+            if anions and cations and not ion_pairs:
                 continue
             left = sites - anions - cations
             if unpaired in _reachable(left + abs(spare), tally.carbenes):
