@@ -288,7 +288,7 @@ class Facts:
 
     @cached_property
     def symmetry(self) -> "Symmetry":
-        """The geometry's point group and frame, ghosts told from atoms; not derivable where it cannot be settled."""
+        """The geometry's point group and frame, ghosts told from atoms; not derivable where it is not settled."""
         from checker.chemistry.symmetry import find_symmetry
 
         stated = self.job.symmetry

@@ -1,7 +1,7 @@
 """What a deck states by irrep, seen from the geometry's own symmetry: lazy, cached, read-only, part of `Facts`.
 
-The group of the deck lies in the group of the body in one orientation, by which electrons and functions are counted
-in either. A fact that cannot be worked out raises `NotDerivable` with the reason.
+The group of the deck lies in the group of the body in one orientation, by which electrons and functions are
+counted in either. A fact that cannot be worked out raises `NotDerivable` with the reason.
 """
 
 from collections.abc import Callable, Mapping
@@ -49,9 +49,7 @@ class IrrepFacts:
         symmetry = self._facts.symmetry
         placed = symmetry.subgroup(self.group, self._facts.job.symmetry.axes)
         if placed is None:
-            raise NotDerivable(
-                f"the geometry has the point group {symmetry.group}, and {self.group} is not within it"
-            )
+            raise NotDerivable(f"the geometry has the point group {symmetry.group}, {self.group} is not within it")
         return placed
 
     @cached_property
@@ -75,8 +73,8 @@ class IrrepFacts:
     def electrons(self) -> tuple[dict[str, int], dict[str, int]]:
         """Alpha and beta electrons by irrep of the deck's group, zeros left out.
 
-        Not derivable where the deck states none or one spin only, where a name is no irrep of the group or a number
-        is negative, and where unpaired orbitals are more than 2S.
+        Not derivable where the deck states none or one spin only, where a name is no irrep of the group or a
+        number is negative, and where unpaired orbitals are more than 2S.
         """
         occupations = self._facts.job.occupations
         if occupations is None:
@@ -126,13 +124,21 @@ class IrrepFacts:
         return self._summed(lambda shells, form: self._levels(self.body_group, placement, shells, form))
 
     @cached_property
-    def minimal_functions(self) -> dict[str, int]:
-        """Core and valence functions by irrep of the deck's group, as a minimal basis would have them."""
+    def minimal_body_levels(self) -> dict[str, int]:
+        """Core and valence levels by irrep of the body's group, as a minimal basis would have them."""
+        return self._levels(self.body_group, self._facts.symmetry.placement, self._minimal_shells, "spherical")
+
+    @cached_property
+    def _minimal_shells(self) -> NDArray[np.int64]:
         from checker.chemistry.minimal_shells import minimal_shells
 
+        return minimal_shells(self._facts.numbers, self._facts.is_ghost)
+
+    @cached_property
+    def minimal_functions(self) -> dict[str, int]:
+        """Core and valence functions by irrep of the deck's group, as a minimal basis would have them."""
         dimensions = {irrep.name: irrep.dimension for irrep in self._facts.point_group.irreps}
-        shells = minimal_shells(self._facts.numbers, self._facts.is_ghost)
-        levels = self._levels(self.group, self.placement, shells, "spherical")
+        levels = self._levels(self.group, self.placement, self._minimal_shells, "spherical")
         return {name: dimensions[name] * n for name, n in levels.items()}
 
     def _summed(self, levels: Callable[[NDArray[np.int64], Form], dict[str, int]]) -> dict[str, int]:
@@ -153,19 +159,24 @@ class IrrepFacts:
         inversion = int(indices_of(INVERSION, placement.operations))
         return levels_on_axis(symbol, placement.permutations[inversion] if inversion >= 0 else None, shells, form)
 
-    def levels_at_most(self) -> dict[str, int] | None:
-        """Return the levels there are of each irrep of the body's group, None without a known basis."""
+    @cached_property
+    def _limits(self) -> tuple[dict[str, int] | None, ...]:
+        """Levels of each irrep of the body's group: in a minimal picture, then in the basis, else any."""
         try:
-            return self.body_levels
+            return self.minimal_body_levels, self.body_levels
         except NotDerivable:
-            return None
+            return self.minimal_body_levels, None
 
     def readings(self, alpha: Counts, beta: Counts) -> tuple["OpenLevel", ...] | None:
-        """Return the open levels that an occupation may mean, None where it fills whole levels."""
-        into, most = self.electrons_per_level, self.levels_at_most()
-        if all(fills_whole_levels(into, counts, most) for counts in (alpha, beta)):
+        """Return the open levels that an occupation may mean, likeliest first; None where it fills whole levels.
+
+        Readings within the cores and valence shells of the atoms go before those that need more.
+        """
+        into = self.electrons_per_level
+        if any(all(fills_whole_levels(into, counts, most) for counts in (alpha, beta)) for most in self._limits):
             return None
-        return open_levels(into, alpha, beta, most)
+        found = (open_levels(into, alpha, beta, most) for most in self._limits)
+        return next((levels for levels in found if levels), ())
 
     def is_consistent(self, alpha: Counts, beta: Counts) -> bool:
         """Tell whether an occupation fits the shells of its atoms and is of one term, as a ground state's is."""

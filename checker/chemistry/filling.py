@@ -103,10 +103,13 @@ def open_levels(
     """
     alpha_parts, beta_parts = (dict(_parts(into, counts, most)) for counts in (alpha, beta))
     found = []
-    for irrep in into:
+    for irrep, level in into.items():
+        filled = fills_whole_levels(into, _without(alpha, level), _one_less(most, irrep))
         for first, second in itertools.product(alpha_parts.get(irrep, ()), beta_parts.get(irrep, ())):
-            if first or second:
-                found.append(OpenLevel(irrep, sum(into[irrep].values()), first, second))
+            if first:
+                found.append(OpenLevel(irrep, sum(level.values()), first, second))
+            elif second:  # what beta fills in part alpha fills wholly, if it can
+                found.append(OpenLevel(irrep, sum(level.values()), dict(level) if filled else {}, second))
     return tuple(sorted(found, key=lambda level: (level.dimension, level.n_electrons)))
 
 

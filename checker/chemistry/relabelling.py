@@ -79,10 +79,14 @@ def _exchanging(other: Relabelling, subgroup: str, turn: Matrices) -> Matrices:
     return np.asarray(np.einsum("ji,kjl,lm->kim", turn, both_hands, turn))
 
 
+_CYCLIC = ((1, 2, 0), (2, 0, 1))
+
+
 def _choices(symbol: str) -> list[tuple[Matrices, str]]:
     family, n = family_of(symbol)
     if symbol in ("D2", "D2h"):
-        return [(_permuting(order), _exchange_words(order)) for order in itertools.permutations(range(3))]
+        orders = sorted(itertools.permutations(range(3)), key=lambda order: order in _CYCLIC)  # exchanges first
+        return [(_permuting(order), _exchange_words(order)) for order in orders]
     if family in ("Cnv", "Dn", "Dnh") and n % 2 == 0:
         words = "x and y exchanged" if n == 2 else f"axes turned by {180 / n:g} degrees about z"
         return [(rotation((0.0, 0.0, 1.0), -np.pi / n), words)]
