@@ -1,5 +1,6 @@
 """The command line: the only place that prints, reads the environment or decides on an exit status."""
 
+import gc
 import os
 import sys
 from collections.abc import Callable, Sequence
@@ -69,11 +70,12 @@ app = typer.Typer(
 
 def main() -> None:
     """Run the command line of this process and exit with its status."""
+    gc.disable()  # nothing made by imports is garbage; _end_of_imports turns it on again
     sys.exit(run(sys.argv[1:]))
 
 
 def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
-    """Run the command line on the arguments and return the exit status; nothing escapes but SystemExit of shell completion.
+    """Run the command line on the arguments and return the exit status; only shell completion leaves by SystemExit.
 
     Parameters
     ----------
@@ -96,6 +98,16 @@ def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
         sentence = _usage_sentence(fault)
         return _complain(sentence) if sentence else _own_fault(fault)
     return int(status or CLEAN) if argv else UNREADABLE
+
+
+def _end_of_imports() -> None:
+    """Load the rules, then let the garbage collector begin, with what is loaded by now left out of its rounds."""
+    from checker.api import all_rules
+
+    if not gc.isenabled():
+        all_rules()
+        gc.freeze()
+        gc.enable()
 
 
 def _print_version(wanted: bool) -> None:
@@ -181,6 +193,7 @@ def check(
     """Judge decks and return the exit status."""
     from checker import checking
 
+    _end_of_imports()
     wish = checking.wish(
         decks=decks or [],
         form=form,

@@ -58,8 +58,13 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
         ledger=facts.ledger,
         expected=facts.expected,
         rule_failed=any(finding.rule == "rule-failed" for finding in findings),
-        atoms_file=deck.places.find("species.atoms[0]").file,
+        atoms_file=_atoms_file(deck) if any(finding.numbered for finding in findings) else None,
     )
+
+
+def _atoms_file(deck: Deck) -> str:
+    """Return the file that the rows of the atoms stand in; only repairs ask for it, as it needs the places."""
+    return deck.places.find("species.atoms[0]").file
 
 
 def unreadable(deck: UnreadableDeck) -> DeckReport:

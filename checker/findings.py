@@ -172,7 +172,8 @@ class BasisBook:
 class DeckReport:
     """All that is said of one deck; findings stand worst first, then by line and rule, accepted ones last.
 
-    `atoms_file` is the file that holds the rows of the atoms: the deck itself, or its geometry file.
+    `atoms_file` is the file that holds the rows of the atoms, the deck itself or its geometry file; None where
+    no repair asks for it.
     """
 
     deck: str

@@ -1,6 +1,6 @@
 """How long `hundsight check` takes on one small deck, against importing the libraries it stands on.
 
-Both are run by turns in processes of their own, with compiled modules at hand, and the ratio of each pair is taken;
+Both are run by turns in processes of their own, modules compiled, and the ratio of each pair is taken;
 the floor is 1.5 at the median:
 
     python tests/benchmarks/startup.py [PAIRS]
