@@ -4,6 +4,7 @@ from checker.registry import Rule
 from rules import (
     acceptance_lapsed,
     atom_ground_term,
+    caution,
     charge_structure,
     close_contact,
     closed_shell_treatment,
@@ -52,4 +53,5 @@ ALL_RULES: tuple[Rule, ...] = (
     deck_unreadable.RULE,
     rule_failed.RULE,
     acceptance_lapsed.RULE,
+    caution.RULE,
 )

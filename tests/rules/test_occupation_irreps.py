@@ -7,6 +7,7 @@ import pytest
 from builders import job, run_rule, speak
 from checker.errors import NotDerivable
 from checker.findings import Edit, Finding, Grade
+from checker.report.plain import split_key
 from rules.occupation_irreps import RULE
 
 
@@ -54,7 +55,7 @@ def test_names_of_the_group_pass(group: str, names: str) -> None:
 )
 def test_a_wrong_name_halts_and_the_nearest_are_ready(group: str, name: str, offered: list[str]) -> None:
     (finding,) = alpha(group, **{name: 2})
-    assert finding.at == "occupations.alpha"
+    assert split_key(finding.at) == ("occupations", "alpha", name)
     assert (finding.grade or RULE.grade) is Grade.HALT
     renamed = [repair.edits[0].value for repair in finding.repairs if repair.edits[0].key == "occupations.alpha"]
     assert renamed == [{new: 2} for new in offered]
@@ -89,6 +90,7 @@ def test_names_of_another_group_are_recognised_as_a_whole() -> None:
 def test_another_spelling_is_a_note_that_says_what_is_read(group: str, name: str, meant: str) -> None:
     (finding,) = alpha(group, **{name: 1})
     assert finding.grade is Grade.NOTE
+    assert split_key(finding.at) == ("occupations", "alpha", name)
     assert f"{name} is read as {meant}" in finding.message
     assert finding.repairs[0].edits == (Edit("occupations.alpha", {meant: 1}),)
 
@@ -116,12 +118,12 @@ def test_occupations_without_a_group_are_not_judged() -> None:
     ("tables", "at"),
     [
         pytest.param(
-            {"treatment": {"frozen_orbitals": {"A1": 1, "X": 1}}}, "treatment.frozen_orbitals", id="frozen"
+            {"treatment": {"frozen_orbitals": {"A1": 1, "X": 1}}}, "treatment.frozen_orbitals.X", id="frozen"
         ),
         pytest.param({"treatment": {"frozen_orbitals": 2}}, None, id="frozen_number"),
         pytest.param({"treatment": {"state_irrep": "B1g"}}, "treatment.state_irrep", id="state"),
         pytest.param({"treatment": {"state_irrep": "b1"}}, None, id="state_known"),
-        pytest.param({"treatment": {"roots": {"A1": 2, "B1g": 1}}}, "treatment.roots", id="roots"),
+        pytest.param({"treatment": {"roots": {"A1": 2, "B1g": 1}}}, "treatment.roots.B1g", id="roots"),
         pytest.param(
             {"active_space": {"electrons": 4, "orbitals": {"A1": 2, "B9": 1}}},
             "active_space.orbitals",

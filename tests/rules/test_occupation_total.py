@@ -54,20 +54,20 @@ def test_sums_that_fit_pass(
 @pytest.mark.parametrize(
     ("species", "group", "occupations", "at"),
     [
-        pytest.param(("O O", 0, 3), "D2h", {"alpha": BETA_O2, "beta": BETA_O2}, "occupations", id="14_of_16"),
-        pytest.param(("O O", 0, 1), "D2h", {"alpha": ALPHA_O2, "beta": BETA_O2}, "occupations", id="triplet"),
-        pytest.param(("O O", 0, 3), "D2h", {"alpha": ALPHA_O2}, "occupations", id="beta_missing"),
-        pytest.param(("O H H", 0, 1), "C2v", {"paired": {"A1": 3, "B1": 1}}, "occupations", id="8_of_10"),
-        pytest.param(("C H H H H", 0, 1), "Td", {"paired": {"A1": 2, "T2": 3}}, "occupations", id="T2_singly"),
-        pytest.param(("C H H", 0, 3), "C2v", {"paired": {"A1": 3, "B2": 1}}, "occupations.unpaired", id="closed"),
-        pytest.param(("N O", 0, 2), "Cinfv", {"paired": {"Σ+": 5, "Π": 1}, "unpaired": {"Π": 1}}, "occupations",
+        pytest.param(("O O", 0, 3), "D2h", {"alpha": BETA_O2, "beta": BETA_O2}, "alpha", id="14_of_16"),
+        pytest.param(("O O", 0, 1), "D2h", {"alpha": ALPHA_O2, "beta": BETA_O2}, "alpha", id="triplet"),
+        pytest.param(("O O", 0, 3), "D2h", {"alpha": ALPHA_O2}, "alpha", id="beta"),
+        pytest.param(("O H H", 0, 1), "C2v", {"paired": {"A1": 3, "B1": 1}}, "paired", id="8_of_10"),
+        pytest.param(("C H H H H", 0, 1), "Td", {"paired": {"A1": 2, "T2": 3}}, "paired", id="T2"),
+        pytest.param(("C H H", 0, 3), "C2v", {"paired": {"A1": 3, "B2": 1}}, "unpaired", id="closed"),
+        pytest.param(("N O", 0, 2), "Cinfv", {"paired": {"Σ+": 5, "Π": 1}, "unpaired": {"Π": 1}}, "paired",
                      id="16_of_15_pi_counts_whole"),
     ],
 )  # fmt: skip
 def test_sums_that_do_not_fit_halt(
     species: tuple[str, int, int], group: str, occupations: dict[str, Any], at: str
 ) -> None:
-    assert [f.at for f in judged(*species, group, occupations)] == [at]
+    assert [f.at for f in judged(*species, group, occupations)] == [f"occupations.{at}"]
 
 
 def test_says_the_sum_the_books_and_the_gap() -> None:
@@ -123,7 +123,7 @@ def test_a_degenerate_open_shell_is_pointed_to_an_abelian_group() -> None:
 @pytest.mark.parametrize(
     ("group", "occupations", "because"),
     [
-        pytest.param("C2v", {"paired": {"Q": 5}}, "Q is no irrep of C2v", id="unknown_name"),
+        pytest.param("C3v", {"paired": {"Q": 5}}, "Q is no irrep of C3v", id="unknown_name"),
         pytest.param("C2v", {"paired": {"A1": -5}}, "negative", id="negative"),
         pytest.param(None, {"paired": {"A1": 5}}, "states no point group", id="orbitals_need_a_group"),
         pytest.param("D2x", {"paired": {"A1": 5}}, "no point group", id="unknown_group"),
@@ -137,3 +137,9 @@ def test_what_cannot_be_summed_is_not_judged(group: str | None, occupations: dic
 def test_unknown_books_are_not_judged() -> None:
     with pytest.raises(NotDerivable):
         judged("I", -1, 1, "C1", {"alpha": {"A": 13}}, core_potential={"name": "of-our-own"})
+
+
+def test_a_wrong_name_of_sure_dimension_is_still_counted() -> None:
+    (finding,) = judged("S H H", 0, 1, "C2v", {"paired": {"A1": 5, "B1u": 1, "B2": 2}})
+    assert finding.message.endswith("make 16 electrons, and the job has 18; add 2")
+    assert judged("S H H", 0, 1, "C2v", {"paired": {"A1": 5, "B1u": 2, "Q": 2}}) == []
