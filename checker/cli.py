@@ -75,7 +75,7 @@ def main() -> None:
 
 
 def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
-    """Run the command line on the arguments and return the exit status; only shell completion leaves by SystemExit.
+    """Run the command line on the arguments and return the exit status; only shell completion exits by itself.
 
     Parameters
     ----------

@@ -18,6 +18,7 @@ from checker.report.plain import VERDICT_ORDER
 REPORT_VERSION = 1
 SHARE_DECIMALS = 4  # weights and confidences
 EVIDENCE_DIGITS = 6
+_SURROGATE = "\\ud"
 EDIT_DECIMALS = 8  # coordinates as they go into a deck
 
 
@@ -65,7 +66,12 @@ def _listed(records: list[dict[str, Any]]) -> str:
 
 
 def _text(value: object) -> str:
-    return json.dumps(_clean(value), allow_nan=False)
+    """Return a value as JSON on one line; the few that JSON has no words for are cleaned first."""
+    try:
+        text = json.dumps(value, allow_nan=False)
+    except (TypeError, ValueError):
+        return json.dumps(_clean(value), allow_nan=False)
+    return json.dumps(_clean(value)) if _SURROGATE in text else text
 
 
 def _clean(value: Any) -> Json:
