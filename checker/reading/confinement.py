@@ -17,10 +17,11 @@ from typing import BinaryIO
 from checker.errors import Complaint, UnreadableInput
 from checker.reading.files import open_regular
 from checker.reading.kinds import GEOMETRY_SUFFIXES
+from checker.reading.limits import MAX_PATH_CHARACTERS
 from checker.reading.words import listed, quoted, shown_path
 
 _FORBIDDEN = (
-    (re.compile(r"[\0-\x1f\x7f]"), "holds a control character"),
+    (re.compile(r".*[\0-\x1f\x7f]", re.DOTALL), "holds a control character"),
     (re.compile(r"[A-Za-z][A-Za-z0-9+.-]*://"), "is an address, but nothing is read from the network"),
     (re.compile(r"[A-Za-z]:"), "begins with a drive letter, but must be relative to the deck"),
     (re.compile(r"/"), "begins at the root, but must be relative to the deck"),
@@ -82,8 +83,10 @@ def sentence_on_path(written: str) -> str | None:
     start = f"species.geometry is {quoted(written)}, which"
     if not written.strip():
         return "species.geometry is empty; name an XYZ file beside the deck"
+    if len(written) > MAX_PATH_CHARACTERS:  # resolving a path of a million folders takes hours
+        return f"{start} is longer than {MAX_PATH_CHARACTERS:,} characters; name an XYZ file beside the deck"
     for pattern, why in _FORBIDDEN:
-        if pattern.search(written) if pattern is _FORBIDDEN[0][0] else pattern.match(written):
+        if pattern.match(written):
             return f"{start} {why}; name an XYZ file beside the deck"
     if "\\" in written:
         return f"{start} holds a backslash; write folders with forward slashes"
@@ -115,7 +118,7 @@ def open_geometry(written: str, home: Home) -> BinaryIO:
 
 
 def _confined(path: str, written: str, home: Home) -> str:
-    real = os.path.realpath(path)
+    real = os.path.realpath(path) if home.roots else ""
     if any(is_within(real, root) for root in home.roots):
         return real
     raise _refusal(

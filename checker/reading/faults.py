@@ -5,7 +5,7 @@ from typing import NamedTuple, TypeAlias
 
 from checker.errors import Complaint
 from checker.reading.limits import MAX_COMPLAINTS, MAX_COMPLAINTS_PER_LIST
-from checker.reading.words import plural, printable
+from checker.reading.words import plural, shortened
 from checker.source import Span
 
 KeyPath: TypeAlias = tuple[str | int, ...]
@@ -24,7 +24,7 @@ def key_text(path: KeyPath) -> str:
     >>> key_text(("fragments", 0, "atoms", 2))
     'fragments[0].atoms[2]'
     """
-    parts = [f"[{step}]" if isinstance(step, int) else f".{printable(step)}" for step in path]
+    parts = [f"[{step}]" if isinstance(step, int) else f".{shortened(step)}" for step in path]
     return "".join(parts).removeprefix(".")
 
 
@@ -45,9 +45,12 @@ def in_order(complaints: Iterable[Complaint]) -> tuple[Complaint, ...]:
     return (*listed[:MAX_COMPLAINTS], rest)
 
 
-def cut_short(faults: Sequence[Fault], of: str) -> list[Fault]:
-    """Return the first faults of a long list, and a last one that counts the others."""
-    n_left = len(faults) - MAX_COMPLAINTS_PER_LIST
+def cut_short(faults: Sequence[Fault], of: str, n_faults: int | None = None) -> list[Fault]:
+    """Return the first faults of a long list, and a last one that counts the others.
+
+    `n_faults` is how many there are, where `faults` does not hold all of them.
+    """
+    n_left = (n_faults or len(faults)) - MAX_COMPLAINTS_PER_LIST
     if n_left <= 0:
         return list(faults)
     first_left = faults[MAX_COMPLAINTS_PER_LIST].at

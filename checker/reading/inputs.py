@@ -67,8 +67,7 @@ def read_text(text: str | bytes, *, name: str, fill_in: FillIn) -> Iterator[Deck
 
 
 def _read_stdin(stdin: BinaryIO | None, fill_in: FillIn) -> Iterator[Deck | UnreadableDeck]:
-    own = sys.stdin.buffer if sys.stdin is not None else None
-    stream = stdin or own
+    stream = stdin or getattr(sys.stdin, "buffer", None)
     if stream is None or stream.closed:
         yield UnreadableDeck(STANDARD_INPUT, (Complaint(_NO_INPUT, STANDARD_INPUT),))
         return

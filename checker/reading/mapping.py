@@ -11,7 +11,7 @@ from checker.reading.kinds import Kind
 from checker.reading.outline import Outline
 from checker.reading.places import DeckPlaces
 from checker.reading.positions import place_in
-from checker.reading.words import printable, quoted
+from checker.reading.words import printable, quoted, shortened
 from checker.source import Span
 
 NESTED_TOO_DEEP = "lists or tables are nested too deep to be read; a deck needs no more than four levels"
@@ -186,7 +186,7 @@ def _refuse_twice(places: DeckPlaces, line: int, column: int) -> NoReturn:
         message = "this key or table has been given before; keep one of the two"
         _refuse(places, message, line, column)
     at, before = places.span(twice.second), places.span(twice.first)
-    message = f"{printable(twice.name)} has been given before, on line {before.line}; keep one of the two"
+    message = f"{shortened(twice.name)} has been given before, on line {before.line}; keep one of the two"
     raise UnreadableInput(complaint(at, message))
 
 

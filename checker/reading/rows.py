@@ -9,7 +9,7 @@ import numpy as np
 
 from checker.geometry import Geometry
 from checker.reading.faults import Fault, cut_short
-from checker.reading.limits import MAX_COORDINATE_ANGSTROM
+from checker.reading.limits import MAX_COMPLAINTS_PER_LIST, MAX_COORDINATE_ANGSTROM
 from checker.reading.symbols import Nuclide, nuclide, nuclide_of_number, sentence_on_number, sentence_on_symbol
 from checker.reading.words import described, plural
 
@@ -30,12 +30,10 @@ def geometry_of_rows(rows: object, length_unit: object) -> Geometry | list[Fault
     read = _read_at_once(rows, scale)
     if read is not None:
         return read
-    faults = [
-        Fault((*ATOMS, index), message)
-        for index, row in enumerate(rows)
-        if (message := _sentence_on_row(row, scale))
-    ]
-    return cut_short(faults, "species.atoms")
+    bad = [index for index, row in enumerate(rows) if _read_at_once([row], scale) is None]
+    shown = bad[: MAX_COMPLAINTS_PER_LIST + 1]  # the last one marks where the rest begins
+    faults = [Fault((*ATOMS, index), _sentence_on_row(rows[index], scale)) for index in shown]
+    return cut_short(faults, "species.atoms", len(bad))
 
 
 def geometry_of(nuclides: Iterable[Nuclide], coordinates: Any) -> Geometry:

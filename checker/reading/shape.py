@@ -10,8 +10,9 @@ from pydantic_core import ErrorDetails
 from checker.model import DECK_VERSION, UNION_TAGS, Job
 from checker.reading.faults import Fault, KeyPath, key_text
 from checker.reading.known_keys import header, lists_of_tables, sentence_on_unknown, suggestion
+from checker.reading.limits import MAX_FAULTS_OF_FORM
 from checker.reading.symbols import sentence_on_symbol
-from checker.reading.words import described, listed, nearest, quoted
+from checker.reading.words import described, listed, nearest, plural, quoted
 
 # how to write a required key that is missing
 _MISSING = {
@@ -35,7 +36,14 @@ def build(mapping: dict[str, Any]) -> Job | list[Fault]:
     try:
         return Job.model_validate(mapping)
     except ValidationError as error:
-        return list(_faults(error.errors(include_url=False)))
+        errors = error.errors(include_url=False)
+    # a sentence costs up to a millisecond, and a hostile deck has a million errors
+    faults = list(_faults(errors[:MAX_FAULTS_OF_FORM]))
+    n_left = len(errors) - MAX_FAULTS_OF_FORM
+    if n_left > 0:
+        rest = f"and {plural(n_left, 'more fault')} of form; mend the first ones and check again"
+        faults.append(Fault(_path(errors[MAX_FAULTS_OF_FORM]), rest))
+    return faults
 
 
 def _faults(errors: list[ErrorDetails]) -> Iterator[Fault]:

@@ -86,10 +86,10 @@ def _proper(symbol: str) -> str:
 
 
 def _meant(written: str) -> str | None:
-    """Return the symbol whose element's name, or which itself, is nearest to a text."""
+    """Return the symbol whose element's name is nearest to a word, or that a short word holds."""
     word = written.strip()
     if len(word) > 3:
         by_name = {name_of(z): symbol for symbol, z in numbers_by_symbol().items()}
         name = nearest(word, list(by_name), 0.8)
         return by_name[name] if name else None
-    return nearest(word, list(numbers_by_symbol()), 0.6)
+    return next((_proper(part) for part in (word[:2], word[:1], word[1:]) if number_of(part)), None)

@@ -14,8 +14,12 @@ def quoted(text: str) -> str:
     >>> quoted("Fe2+"), quoted("x" * 50)
     ("'Fe2+'", "'xxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxxx...'")
     """
-    short = text if len(text) <= LONGEST_QUOTE else text[: LONGEST_QUOTE - 1] + "..."
-    return "'" + printable(short) + "'"
+    return f"'{shortened(text)}'"
+
+
+def shortened(text: str) -> str:
+    """Return the beginning of a text, made printable."""
+    return printable(text if len(text) <= LONGEST_QUOTE else text[: LONGEST_QUOTE - 1] + "...")
 
 
 def printable(text: str) -> str:

@@ -140,7 +140,8 @@ def _read_count(draft: _Draft, lines: LineStream) -> int:
     if not is_count_line(line):
         message = f"expected the number of atoms alone on this line, found {shown}{REST_NOT_READ}"
     elif len(line.strip()) > 18 or int(line) > MAX_FRAME_ATOMS:
-        message = f"the count line says {shown[1:-1]} atoms, but at most {MAX_FRAME_ATOMS:,} a frame are read{REST_NOT_READ}"
+        most = f"at most {MAX_FRAME_ATOMS:,} a frame are read"
+        message = f"the count line says {shown[1:-1]} atoms, but {most}{REST_NOT_READ}"
     else:
         if not int(line):
             draft.complain("the count line says 0 atoms; a frame needs at least one", draft.first_line, column)
@@ -182,7 +183,7 @@ def _skip_surplus(lines: LineStream, layout: Layout) -> int:
     try:
         while lines.skip_blank():
             (row,) = lines.take(1)
-            if isinstance(read_row(row, layout), str):
+            if read_row(row, layout) is None:
                 lines.give_back([row])
                 break
             n_surplus += 1

@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 
 from checker.reading.comment import Layout
 from checker.reading.decoding import not_utf8
-from checker.reading.limits import MAX_COORDINATE_ANGSTROM
+from checker.reading.limits import MAX_COMPLAINTS_PER_LIST, MAX_COORDINATE_ANGSTROM
 from checker.reading.reals import real, reals
 from checker.reading.rows import sentence_on_size
 from checker.reading.symbols import Nuclide, nuclide, sentence_on_number, sentence_on_symbol
@@ -46,8 +46,23 @@ def is_count_line(line: bytes) -> bool:
     return line.strip().isdigit()
 
 
-def read_row(row: bytes, layout: Layout) -> Atom | str:
-    """Return the atom of a row, or the sentence on what is wrong with it."""
+def read_row(row: bytes, layout: Layout) -> Atom | None:
+    """Return the atom of a row, or None where anything is wrong with it."""
+    tokens = row.split()
+    if len(tokens) < layout.width:
+        return None
+    found = _nuclide(tokens[layout.element])
+    try:
+        x, y, z = (real(token) for token in tokens[layout.x : layout.x + 3])
+    except ValueError:
+        return None
+    # so written that NaN fails too
+    within = abs(x) <= MAX_COORDINATE_ANGSTROM and abs(y) <= MAX_COORDINATE_ANGSTROM
+    return Atom(found, (x, y, z)) if found and within and abs(z) <= MAX_COORDINATE_ANGSTROM else None
+
+
+def _sentence_on_row(row: bytes, layout: Layout) -> str:
+    """Return all that is wrong with a row at fault, in one sentence."""
     tokens = row.split()
     if len(tokens) < layout.width:
         needed = "element, x, y, z" if layout.width == 4 else "the columns that Properties names"
@@ -56,13 +71,9 @@ def read_row(row: bytes, layout: Layout) -> Atom | str:
         written = tokens[layout.element].decode()
     except UnicodeDecodeError as error:
         return not_utf8(error.object[error.start])
-    found = nuclide(written)
-    xyz = [_coordinate(axis, token) for axis, token in zip("xyz", tokens[layout.x : layout.x + 3], strict=True)]
-    sentences = [word for word in ("" if found else _sentence_on_element(written), *xyz) if isinstance(word, str)]
-    if found and not any(sentences):
-        x, y, z = (value for value in xyz if not isinstance(value, str))
-        return Atom(found, (x, y, z))
-    return "; ".join(filter(None, sentences))
+    parts = ["" if nuclide(written) else _sentence_on_element(written)]
+    parts += map(_sentence_on_coordinate, "xyz", tokens[layout.x : layout.x + 3])
+    return "; ".join(filter(None, parts))
 
 
 def _read_at_once(rows: list[bytes], layout: Layout) -> Rows | None:
@@ -102,11 +113,11 @@ def _read_one_by_one(rows: list[bytes], layout: Layout) -> Rows:
     for row in rows:
         if not row.strip() or is_count_line(row):
             break
-        read = read_row(row, layout)
-        if isinstance(read, str):
-            faults.append((n, read))
-        else:
-            atoms.append(read)
+        atom = read_row(row, layout)
+        if atom:
+            atoms.append(atom)
+        else:  # only the first sentences are shown, and a sentence costs time
+            faults.append((n, _sentence_on_row(row, layout) if len(faults) < MAX_COMPLAINTS_PER_LIST else ""))
         n += 1
     if faults or not atoms:
         return Rows(n, *_no_arrays(), tuple(faults))
@@ -133,7 +144,7 @@ def _sentence_on_element(written: str) -> str:
     return sentence_on_symbol(written)
 
 
-def _coordinate(axis: str, token: bytes) -> float | str:
+def _sentence_on_coordinate(axis: str, token: bytes) -> str:
     shown = quoted(token.decode("utf-8", "replace"))
     try:
         value = real(token)
@@ -141,7 +152,7 @@ def _coordinate(axis: str, token: bytes) -> float | str:
         return f"{axis} is {shown}, but must be a number"
     if not math.isfinite(value):
         return f"{axis} is {shown}, but must be a finite number"
-    return sentence_on_size(axis, shown) if abs(value) > MAX_COORDINATE_ANGSTROM else value
+    return sentence_on_size(axis, shown) if abs(value) > MAX_COORDINATE_ANGSTROM else ""
 
 
 def _no_arrays() -> tuple[NDArray[np.int64], NDArray[np.int64], NDArray[np.float64], NDArray[np.int32]]:
