@@ -36,7 +36,7 @@ def nuclide(written: str) -> Nuclide | None:
     """
     if re.fullmatch(r"[0-9]{1,3}", written):
         return nuclide_of_number(int(written))
-    z = number_of(written)
+    z = number_of(written) if written.isascii() else None  # the long s is no sulfur, though it capitalizes to S
     return None if z is None else Nuclide(z, mass_number_of(written))
 
 

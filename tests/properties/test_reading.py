@@ -135,6 +135,7 @@ def _check_complaints(item: UnreadableDeck, name: str) -> None:
     assert item.complaints
     for complaint in item.complaints:
         assert complaint.file == name
+        assert complaint.message
         assert complaint.message.isprintable(), complaint
         own_words = re.sub(r"'.*'", "", complaint.message.replace(complaint.key or " ", ""))  # not the author's
         assert not re.search(r"invalid|pydantic|input should|traceback|<class|\w+Error\b|!", own_words, re.I)

@@ -36,6 +36,7 @@ def test_lengths_in_bohr_become_angstrom() -> None:
         ('["carbon", 0, 0, 0]', "'carbon' is no element; the nearest is C"),
         ('["Sx", 0, 0, 0]', "'Sx' is no element; the nearest is S"),
         ('["zzz", 0, 0, 0]', "'zzz' is no element; write its symbol or its atomic number"),
+        ('["\u017f", 0, 0, 0]', "'\u017f' is no element; the nearest is S"),
         ('["", 0, 0, 0]', "'' is no element; write its symbol or its atomic number"),
         ("[119, 0, 0, 0]", "no element has the atomic number 119; they run from 1 to 118"),
         ("[true, 0, 0, 0]", "the element is true, but must be a symbol in quotes or an atomic number"),

@@ -159,6 +159,11 @@ def test_properties_may_give_atomic_numbers() -> None:
             id="latin-1",
         ),
         pytest.param(
+            FRAME.replace("O", "\u017f"),
+            [(3, 1, "'\u017f' is no element; the nearest is S")],
+            id="long-s",
+        ),
+        pytest.param(
             FRAME.encode("utf-16-le"),
             [(None, None, "the file is encoded in UTF-16, but must be in UTF-8; save it again as UTF-8")],
             id="utf-16",
