@@ -56,8 +56,9 @@ def to_stdout(pieces: Iterable[str], progress: Progress | None = None) -> None:
     Raises ReaderLeft where the other end of a pipe is closed.
     """
     encoding = getattr(sys.stdout, "encoding", None) or "utf-8"
+    same_screen = sys.stdout.isatty()
     for piece in pieces:
-        if progress is not None:
+        if progress is not None and same_screen:
             progress.hide()
         _put(piece if piece.isascii() else piece.encode(encoding, "backslashreplace").decode(encoding))
     if progress is not None:
