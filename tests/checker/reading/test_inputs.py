@@ -325,3 +325,27 @@ class TestFillIn:
         assert self.said_beside(BY_FILE, "a.deck.toml") == (0, 2, twice)
         assert self.said_beside(BY_FILE.replace("= 0", "= 1"), "a.deck.toml") == (1, 2, twice)
         assert self.said_beside(BY_FILE.replace("charge = 0\n", ""), "a.deck.toml") == (0, 2, [])
+
+
+def test_error_a_path_of_a_million_folders_is_refused_at_once(workplace: Workplace) -> None:
+    workplace({"a.deck.toml": HEAD + f'geometry = "{"a/" * 1_000_000}g.xyz"\n'})
+    assert sentences("a.deck.toml") == [
+        f"a.deck.toml:4:1: species.geometry is '{'a/' * 19}a...', which is longer than 1,000 characters; name an XYZ file beside the deck"
+    ]
+
+
+def test_reading_opens_nothing_but_what_was_given(workplace: Workplace, monkeypatch: pytest.MonkeyPatch) -> None:
+    """The names inside a deck (here of the deck that orbitals come from) are words, not files to open."""
+    opened: list[str] = []
+    real_open = os.open
+
+    def spy(path: str, flags: int, *rest: int) -> int:
+        opened.append(path)
+        return real_open(path, flags, *rest)
+
+    workplace(
+        {"a.deck.toml": BY_FILE + '[treatment]\nstarts_from = "b.deck.toml"\n', "g.xyz": FRAME, "b.deck.toml": "x"}
+    )
+    monkeypatch.setattr(os, "open", spy)
+    assert len(found("a.deck.toml")) == 1
+    assert [Path(path).name for path in opened] == ["a.deck.toml", "g.xyz"]
