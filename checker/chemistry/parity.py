@@ -23,6 +23,9 @@ from checker.elements import name_of, symbol_of
 from checker.errors import NotDerivable
 
 MOST_CAUSES = 8
+LEAST_CAUSES = 3
+SHARPNESS = 1.6
+"""Power that turns weights into shares. On G2 the shares agree best with the hits at 2.0; decks are messier."""
 LEAST_SHARE = 0.01
 """Causes below this share of the weight are not worth a line."""
 
@@ -133,11 +136,15 @@ def _copies(numbers: Ints, bonds: Bonds) -> tuple[int, ...]:
 
 
 def _normalised(causes: Iterator[Cause]) -> tuple[Cause, ...]:
-    ranked = sorted(causes, key=lambda cause: -cause.weight)
-    total = sum(cause.weight for cause in ranked)
-    kept = [cause for cause in ranked if cause.weight >= LEAST_SHARE * total][:MOST_CAUSES]
-    share = sum(cause.weight for cause in kept)
-    return tuple(replace(cause, weight=cause.weight / share) for cause in kept) if share else ()
+    """Rank the causes and make their weights shares; the tail is cut, but never below three."""
+    ranked = sorted(causes, key=lambda cause: -cause.weight)[:MOST_CAUSES]
+    weights = [cause.weight**SHARPNESS for cause in ranked]
+    total = sum(weights)
+    kept = sum(1 for place, weight in enumerate(weights) if place < LEAST_CAUSES or weight >= LEAST_SHARE * total)
+    share = sum(weights[:kept])
+    return tuple(
+        replace(cause, weight=weight / share) for cause, weight in zip(ranked[:kept], weights, strict=False)
+    )
 
 
 @dataclass(frozen=True)

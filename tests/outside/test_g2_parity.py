@@ -41,5 +41,5 @@ def test_where_the_structure_is_whole_it_comes_first(table: dict[str, Score], sl
 
 def test_a_removed_hydrogen_is_named_at_the_right_atom(table: dict[str, Score]) -> None:
     score = table["hydrogen removed"]
-    assert score.atom_first >= 0.96 * score.cases
+    assert score.atom_first >= 0.98 * score.cases
     assert score.first >= 0.88 * score.cases
