@@ -5,8 +5,8 @@ import re
 from checker.errors import RepairRefused
 from checker.findings import Edit, Json
 from checker.repair_rows import in_no_style, in_style_of
+from checker.report.deck_lines import COMMENT_KEYS
 
-COMMENT_KEYS = ("species.charge", "species.multiplicity")
 _ATOM = re.compile(r"species\.atoms\[(\d{1,9})\]\Z")
 _COLUMNS = re.compile(r"(?i)(?<!\S)properties\s*=\s*(\S+)")
 _PLAIN_COLUMNS = re.compile(r"(?i)\"?species:S:1:pos:R:3\"?\Z")

@@ -1,10 +1,12 @@
 """Repairs as the lines that a deck needs, ready to paste."""
 
 import json
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Generator, Iterator
 
 from checker.findings import DeckReport, Edit, Json, Repair
 from checker.report.plain import number, plain, split_key, toml_key, toml_value
+
+COMMENT_KEYS = ("species.charge", "species.multiplicity")  # what a comment line of XYZ can state
 
 
 def deck_lines(repair: Repair, report: DeckReport) -> list[str]:
@@ -51,14 +53,10 @@ def _n_atoms(report: DeckReport) -> int | None:
 
 def _value_lines(edits: list[Edit], language: str) -> Iterator[str]:
     if language == "xyz":
-        words = [f"{edit.key.rpartition('.')[2]}={edit.value}" for edit in edits if edit.value is not None]
-        gone = [edit.key.rpartition(".")[2] for edit in edits if edit.value is None]
-        if words:
-            yield f"comment line: {' '.join(words)}"
-        if gone:
-            yield f"comment line: without {', '.join(gone)}"
-        return
-    write = _toml_lines if language == "toml" else _json_lines
+        edits = yield from _comment_words(edits)
+        if edits:
+            yield "in a deck that names this file as its geometry:"
+    write = _json_lines if language == "json" else _toml_lines
     tables: dict[tuple[str | int, ...], list[tuple[tuple[str | int, ...], Json]]] = {}
     for edit in edits:
         steps = split_key(edit.key)
@@ -66,6 +64,18 @@ def _value_lines(edits: list[Edit], language: str) -> Iterator[str]:
         tables.setdefault(steps[:n_head], []).append((steps[n_head:], edit.value))
     for table, entries in tables.items():
         yield from write(table, entries)
+
+
+def _comment_words(edits: list[Edit]) -> Generator[str, None, list[Edit]]:
+    """Yield what the comment line of an XYZ file is to say, and return the edits that it has no words for."""
+    of_comment = [edit for edit in edits if edit.key in COMMENT_KEYS]
+    words = [f"{edit.key.rpartition('.')[2]}={edit.value}" for edit in of_comment if edit.value is not None]
+    gone = [edit.key.rpartition(".")[2] for edit in of_comment if edit.value is None]
+    if words:
+        yield f"comment line: {' '.join(words)}"
+    if gone:
+        yield f"comment line: without {', '.join(gone)}"
+    return [edit for edit in edits if edit.key not in COMMENT_KEYS]
 
 
 def _table_depth(steps: tuple[str | int, ...]) -> int:

@@ -98,6 +98,18 @@ def test_xyz(deck: str) -> None:
     ]
 
 
+def test_what_xyz_cannot_hold_needs_a_deck() -> None:
+    """The comment line states charge and multiplicity only."""
+    shown = written(CHARGE, Edit("treatment.intent", "excited"), deck="a.xyz")
+
+    assert shown == [
+        "comment line: charge=-1",
+        "in a deck that names this file as its geometry:",
+        "[treatment]",
+        'intent = "excited"',
+    ]
+
+
 def test_rows_of_a_geometry_file_are_said_to_be_there() -> None:
     """The deck itself has no rows then."""
     shown = written(SPIN, Edit("species.atoms[0]", None), atoms_file="w.xyz")
