@@ -13,8 +13,6 @@ from functools import lru_cache
 from checker.chemistry.irreps import LINEAR_LETTERS, Irrep, PointGroup
 
 MOST_SUGGESTED = 4
-LETTER_WEIGHT = 3
-"""A wrong letter weighs as much as three wrong marks: people lose marks more often than they change letters."""
 
 _SINGLE_PRIMES = "′’‘`´ʹ"
 _OTHER_CHARACTERS = str.maketrans(
@@ -57,6 +55,54 @@ def parse_label(written: str) -> Label | None:
     return Label(_GREEK.get(head[0], head[0]), **dict(zip(kinds, marks, strict=True)))
 
 
+@dataclass(frozen=True, slots=True)
+class Reading:
+    """What a written name is taken for.
+
+    Attributes
+    ----------
+    written : the name as it stands.
+    irrep : what it names, or None.
+    is_respelled : True where the name is understood, but not written as the project writes it.
+    candidates : where nothing is named, what may have been meant, the likeliest first.
+    lacks_sign : True where a linear molecule's state is named but for the sign of Σ.
+
+    """
+
+    written: str
+    irrep: Irrep | None
+    is_respelled: bool = False
+    candidates: tuple[Irrep, ...] = ()
+    lacks_sign: bool = False
+
+
+def read_orbital(group: PointGroup, written: str) -> Reading:
+    """Read the name of an irrep that counts orbitals or their electrons."""
+    found = find_orbital_irrep(group, written)
+    return Reading(written, found) if found else _read_otherwise(group, written)
+
+
+def read_state(group: PointGroup, written: str) -> Reading:
+    """Read the name of a state's irrep; a term symbol (3B1g) is understood, and so is an atom's without parity."""
+    found = find_irrep(group, written)
+    if found is not None:
+        return Reading(written, found)
+    bare = re.sub(r"^\d+", "", unicodedata.normalize("NFKC", written).strip())
+    agreeing = agreeing_irreps(group, bare)
+    if group.symbol == "Kh" and agreeing:
+        return Reading(written, agreeing[0], is_respelled=bare != written)
+    if [irrep.name[-1] for irrep in agreeing] == ["+", "-"]:
+        return Reading(written, None, candidates=agreeing, lacks_sign=True)
+    return _read_otherwise(group, written, bare)
+
+
+def _read_otherwise(group: PointGroup, written: str, bare: str | None = None) -> Reading:
+    respelled = respelled_irrep(group, bare or written)
+    if respelled is not None:
+        return Reading(written, respelled, is_respelled=True)
+    return Reading(written, None, candidates=nearest_irreps(group, bare or written))
+
+
 def find_irrep(group: PointGroup, written: str) -> Irrep | None:
     """Return the irrep that bears the name, case ignored, Greek letters also spelled out; else None."""
     return group.by_name.get(written.strip().casefold())
@@ -96,17 +142,20 @@ def agreeing_irreps(group: PointGroup, written: str) -> tuple[Irrep, ...]:
 
 
 def nearest_irreps(group: PointGroup, written: str) -> tuple[Irrep, ...]:
-    """Return the irreps that differ least from a name that the group does not have; empty if none is near."""
+    """Return the irreps of the same letter that differ in the fewest marks; empty if no irrep has the letter."""
     agreeing = agreeing_irreps(group, written)
     if agreeing:
         return agreeing[:MOST_SUGGESTED]
     label = parse_label(written)
     if label is None:
         return ()
-    gaps = [(_gap(_modern(label, group), _label(irrep, group)), irrep) for irrep in group.irreps]
-    least = min(gap for gap, _ in gaps)
-    if least > LETTER_WEIGHT:
-        return ()
+    wanted = _modern(label, group)
+    gaps = [
+        (_gap(wanted, has), irrep)
+        for irrep in group.irreps
+        if (has := _label(irrep, group)).letter == wanted.letter
+    ]
+    least = min((gap for gap, _ in gaps), default=0)
     return tuple(irrep for gap, irrep in gaps if gap == least)[:MOST_SUGGESTED]
 
 
@@ -125,5 +174,5 @@ def _modern(label: Label, group: PointGroup) -> Label:
 
 
 def _gap(wanted: Label, has: Label) -> int:
-    marks = zip(astuple(wanted)[1:], astuple(has)[1:], strict=True)
-    return LETTER_WEIGHT * int(wanted.letter != has.letter) + sum(int(a != b) for a, b in marks)
+    """Return in how many marks two names of one letter differ."""
+    return sum(int(a != b) for a, b in zip(astuple(wanted)[1:], astuple(has)[1:], strict=True))

@@ -126,7 +126,7 @@ def test_occupations_without_a_group_are_not_judged() -> None:
         pytest.param({"treatment": {"roots": {"A1": 2, "B1g": 1}}}, "treatment.roots.B1g", id="roots"),
         pytest.param(
             {"active_space": {"electrons": 4, "orbitals": {"A1": 2, "B9": 1}}},
-            "active_space.orbitals",
+            "active_space.orbitals.B9",
             id="active",
         ),
         pytest.param({"active_space": {"electrons": 4, "orbitals": 4}}, None, id="active_number"),
