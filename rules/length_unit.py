@@ -50,15 +50,14 @@ def _as_meant(slip: LengthSlip) -> float:
 
 def _way_out(facts: Facts, meant: str) -> str:
     factor = BOHR_ANGSTROM if meant == "bohr" else 1 / BOHR_ANGSTROM
-    if facts.job.species.geometry is not None:
-        return f"XYZ files are read as angstrom, so multiply the coordinates by {factor:.6f}"
     if facts.job.species.length_unit == meant:
         return f"multiply the coordinates by {factor:.6f}, as the unit has been converted twice"
-    return f'set length_unit = "{meant}"'
+    bare = f" (an XYZ file without a deck is in angstrom: multiply by {factor:.6f})" if meant == "bohr" else ""
+    return f'set length_unit = "{meant}"{bare}'
 
 
 def _repairs(facts: Facts, meant: str, weight: float) -> tuple[Repair, ...]:
-    if facts.job.species.geometry is not None or facts.job.species.length_unit == meant:
+    if facts.job.species.length_unit == meant:
         return ()
     return (Repair(f"the coordinates are in {meant}", (Edit("species.length_unit", meant),), weight),)
 

@@ -66,14 +66,13 @@ def test_says_both_ratios_and_the_way_out() -> None:
     assert finding.at == "species.length_unit"
     assert finding.message == (
         "the nearest neighbours stand at 1.92 times a bond's length; as bohr they would stand at 1.02; "
-        'set length_unit = "bohr"'
+        'set length_unit = "bohr" (an XYZ file without a deck is in angstrom: multiply by 0.529177)'
     )
 
 
-def test_a_geometry_file_is_to_be_converted() -> None:
+def test_the_unit_of_a_geometry_file_is_stated_in_the_deck() -> None:
     (finding,) = scaled(g2["CH4"], 1 / BOHR_ANGSTROM, geometry="methane.xyz")
-    assert "multiply the coordinates by 0.529177" in finding.message
-    assert finding.repairs == ()
+    assert finding.repairs[0].edits == (Edit("species.length_unit", "bohr"),)
 
 
 def test_a_unit_converted_twice_is_said_so() -> None:
