@@ -6,7 +6,8 @@ Provides `unexplained_sites`, `beyond_valence`, `ChargeMismatch` and `charge_mis
 from dataclasses import dataclass
 
 from checker.chemistry.lewis import TETRELS
-from checker.chemistry.valence import Kind, Tally, Valence
+from checker.chemistry.sites import Kind
+from checker.chemistry.valence import Tally, Valence
 
 ROOM_OF_A_LOST_ATOM = 0.75
 """Both ends of a bond of single length must have this much room before two lost hydrogens are suspected."""

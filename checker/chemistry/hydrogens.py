@@ -7,8 +7,9 @@ the edit, and how well the geometry speaks for it (0 to about 1.2).
 from dataclasses import dataclass, replace
 
 from checker.chemistry.lewis import CHALCOGENS, HALOGENS, PNICTOGENS
+from checker.chemistry.sites import Kind, Site
 from checker.chemistry.vacancy import has_twin, hydrogen_site, vacancy
-from checker.chemistry.valence import Kind, Site, Tally, Valence
+from checker.chemistry.valence import Tally, Valence
 
 MOST_CANDIDATES = 5
 LEAST_ROOM = 0.40

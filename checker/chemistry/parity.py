@@ -17,10 +17,10 @@ import numpy as np
 from checker.chemistry.bonding import Bonds, perceive_bonds
 from checker.chemistry.hydrogens import HydrogenEdit, lost_hydrogens, surplus_hydrogens
 from checker.chemistry.neighbours import Floats, Ints
-from checker.chemistry.plausibility import CHARGE_WEIGHTS, state_weight
+from checker.chemistry.plausibility import free_atom_weight, state_weight
+from checker.chemistry.reasons import Wording, why_charge, why_doubled, why_multiplicity
 from checker.chemistry.valence import Valence, assign_valences
 from checker.elements import name_of, symbol_of
-from checker.errors import NotDerivable
 
 MOST_CAUSES = 8
 LEAST_CAUSES = 3
@@ -36,10 +36,6 @@ PRIOR_HYDROGEN_SURPLUS = 0.5
 PRIOR_ATOM_DOUBLED = 30.0
 PRIOR_CORE_UNPUBLISHED = 3.0
 PRIOR_CORE_PUBLISHED = 0.03
-NOT_THE_GROUND_LEVEL = 0.1
-"""Weight of a multiplicity of a free atom that is not that of its ground level."""
-UNUSUAL_CHARGE = 0.3
-"""Weight of a charge that the free atom's element does not usually have."""
 
 
 class Slip(enum.StrEnum):
@@ -89,21 +85,18 @@ def rank_causes(
     valence: Valence | None = None,
     numbering: Ints | None = None,
 ) -> tuple[Cause, ...]:
-    """Rank the slips that may have led to a multiplicity that the electrons do not allow.
+    """Return the slips that may have led to a multiplicity that the electrons do not allow, likeliest first.
+
+    Empty where electrons and multiplicity fit.
 
     Parameters
     ----------
-    numbers : (n,) int array of atomic numbers, real atoms only.
-    coordinates : (n, 3) float array, angstrom.
+    numbers, coordinates : (n,) atomic numbers of the real atoms, (n, 3) angstrom.
     charge, multiplicity : as stated.
     replaced : electrons replaced per atom by a core potential, by atomic number.
     published : counts that published potentials use, by atomic number.
     valence : as found by `assign_valences`; found here if left out.
     numbering : (n,) the numbers that people know the atoms by; 1, 2, ... if left out.
-
-    Returns
-    -------
-    The causes, likeliest first; empty where electrons and multiplicity fit.
 
     Raises
     ------
@@ -174,7 +167,7 @@ class _Job:
         """Weight of a charge and multiplicity for the atoms as they stand."""
         if len(self.numbers) != 1 or self.cores:
             return state_weight(valence.tally, charge, multiplicity)
-        return _free_atom_weight(int(self.numbers[0]), charge, multiplicity)
+        return free_atom_weight(int(self.numbers[0]), charge, multiplicity)
 
     def _index(self, atom: int) -> int:
         return int(self.kept[atom])
@@ -182,24 +175,17 @@ class _Job:
     def _label(self, atom: int) -> str:
         return f"{name_of(int(self.numbers[atom]))} {self.numbering[self._index(atom)]}"
 
+    def _wording(self, valence: Valence) -> Wording:
+        return Wording(valence, self.charge, self.multiplicity, self._label)
+
     def _doubled(self, valence: Valence) -> Iterator[Cause]:
         """Blame the copies if taking them out changes the parity of the electrons."""
         if self._electrons() % 2 == self.multiplicity % 2:
             return
-        every = dict.fromkeys(self.copies)
-        labels = ", ".join(str(self.numbering[atom]) for atom in list(every)[:6]) + (
-            " ..." if len(every) > 6 else ""
-        )
-        one = len(every) == 1
-        reason = (
-            f"atom {labels} lies on another of its element"
-            if one
-            else f"atoms {labels} lie on others of their element"
-        )
         yield Cause(
             kind=Slip.ATOM_DOUBLED,
             weight=PRIOR_ATOM_DOUBLED * max(0.05, self._weight(valence, self.charge, self.multiplicity)),
-            reason=reason,
+            reason=why_doubled([int(self.numbering[atom]) for atom in self.copies]),
             atoms=self.copies,
         )
 
@@ -210,7 +196,7 @@ class _Job:
                 yield Cause(
                     kind=Slip.MULTIPLICITY,
                     weight=PRIOR_MULTIPLICITY * weight,
-                    reason=self._why_multiplicity(valence, multiplicity),
+                    reason=why_multiplicity(self._wording(valence), multiplicity),
                     multiplicity=multiplicity,
                 )
 
@@ -221,7 +207,7 @@ class _Job:
                 yield Cause(
                     kind=Slip.CHARGE,
                     weight=PRIOR_CHARGE * weight,
-                    reason=self._why_charge(valence, charge),
+                    reason=why_charge(self._wording(valence), charge),
                     charge=charge,
                 )
 
@@ -234,11 +220,11 @@ class _Job:
                 yield self._hydrogen_cause(edit, kind, weight)
 
     def _hydrogen_cause(self, edit: HydrogenEdit, kind: Slip, weight: float) -> Cause:
+        centre = "" if edit.centre is None else f" {self._label(edit.centre)}"
         return Cause(
             kind=kind,
             weight=weight,
-            reason=f"{self._label(edit.atom)} {edit.reason}"
-            + ("" if edit.centre is None else " " + self._label(edit.centre)),
+            reason=f"{self._label(edit.atom)} {edit.reason}{centre}",
             atoms=(self._index(edit.atom),),
             position=edit.position,
         )
@@ -257,65 +243,3 @@ class _Job:
                     reason=f"published potentials of {symbol_of(z)} replace {count} electrons, not {stated}",
                     core_electrons=(z, count),
                 )
-
-    def _why_multiplicity(self, valence: Valence, multiplicity: int) -> str:
-        if len(self.numbers) == 1:
-            level = _ground_multiplicity(int(self.numbers[0]), self.charge)
-            if level == multiplicity:
-                return f"the ground level of {_ion(self.numbers, self.charge)} has multiplicity {multiplicity}"
-        if multiplicity == 1 and valence.implied_charge == self.charge:
-            return "all valences are closed, which makes a singlet"
-        if multiplicity == valence.tally.open + 1 and valence.lewis.open:
-            return f"{_places(self, valence)}, {_unpaired(multiplicity)}"
-        return (
-            f"{_unpaired(multiplicity)} fits the electron count"
-            if multiplicity == 2
-            else f"{_unpaired(multiplicity)} fit the electron count"
-        )
-
-    def _why_charge(self, valence: Valence, charge: int) -> str:
-        if valence.implied_charge == charge:
-            return f"closed valences give charge {charge:+d}" if charge else "closed valences give charge 0"
-        if len(self.numbers) == 1 and _ground_multiplicity(int(self.numbers[0]), charge) == self.multiplicity:
-            return f"the ground level of {_ion(self.numbers, charge)} has multiplicity {self.multiplicity}"
-        if valence.implied_charge is not None and abs(charge) > abs(valence.implied_charge):
-            step = "one electron fewer" if charge > valence.implied_charge else "one electron more"
-            return f"{step} than the closed valences hold"
-        return f"charge {charge:+d} fits multiplicity {self.multiplicity}" if charge else "a neutral species fits"
-
-
-def _places(job: _Job, valence: Valence) -> str:
-    open_atoms = sorted(valence.lewis.open)[:3]
-    names = ", ".join(job._label(atom) for atom in open_atoms)
-    return f"{names} {'has an open valence' if len(open_atoms) == 1 else 'have open valences'}"
-
-
-def _unpaired(multiplicity: int) -> str:
-    words = ("no unpaired electron", "one unpaired electron", "two unpaired electrons", "three unpaired electrons")
-    return words[multiplicity - 1] if multiplicity <= len(words) else f"{multiplicity - 1} unpaired electrons"
-
-
-def _free_atom_weight(z: int, charge: int, multiplicity: int) -> float:
-    """Weight of a state of a free atom: usual charge, multiplicity of the ground level."""
-    from checker.chemistry.configurations import usual_charges
-
-    weight = CHARGE_WEIGHTS[min(abs(charge), len(CHARGE_WEIGHTS) - 1)]
-    weight *= 1.0 if charge == 0 or charge in usual_charges(z) else UNUSUAL_CHARGE
-    ground = _ground_multiplicity(z, charge)
-    if ground is None:
-        return weight * NOT_THE_GROUND_LEVEL if charge <= z else 0.0
-    return weight * (1.0 if ground == multiplicity else NOT_THE_GROUND_LEVEL)
-
-
-def _ground_multiplicity(z: int, charge: int) -> int | None:
-    from checker.chemistry.configurations import ground_level
-
-    try:
-        return ground_level(z, charge).multiplicity
-    except NotDerivable:
-        return None
-
-
-def _ion(numbers: Ints, charge: int) -> str:
-    sign = "+" if charge > 0 else "-"
-    return symbol_of(int(numbers[0])) + (f" {abs(charge)}{sign}" if charge else "")

@@ -10,6 +10,7 @@ from collections.abc import Iterator
 from itertools import product
 
 from checker.chemistry.valence import Tally
+from checker.errors import NotDerivable
 
 CHARGE_WEIGHTS = (1.0, 0.35, 0.12, 0.05, 0.02)
 """Of |charge| 0, 1, 2, 3 and more."""
@@ -33,6 +34,11 @@ TRIPLET_PAIR = (0.15, 0.85)
 """O2 and its like: singlet, triplet."""
 METAL_STATE = 0.3
 """Any state of a metal of variable charge: nothing is known of it here."""
+
+NOT_THE_GROUND_LEVEL = 0.1
+"""Weight of a multiplicity of a free atom that is not that of its ground level."""
+UNUSUAL_CHARGE = 0.3
+"""Weight of a charge that the free atom's element does not usually have."""
 
 _MOST_OPEN = 3
 
@@ -105,3 +111,25 @@ def _spin_weight(tally: Tally, unpaired: int, wanted: int) -> float:
     if unpaired > 1:
         weight *= COUPLED
     return weight
+
+
+def free_atom_weight(z: int, charge: int, multiplicity: int) -> float:
+    """Return the relative weight of a state of a free atom: usual charge, multiplicity of the ground level."""
+    from checker.chemistry.configurations import usual_charges
+
+    weight = CHARGE_WEIGHTS[min(abs(charge), len(CHARGE_WEIGHTS) - 1)]
+    weight *= 1.0 if charge == 0 or charge in usual_charges(z) else UNUSUAL_CHARGE
+    ground = ground_multiplicity(z, charge)
+    if ground is None:
+        return weight * NOT_THE_GROUND_LEVEL if charge <= z else 0.0
+    return weight * (1.0 if ground == multiplicity else NOT_THE_GROUND_LEVEL)
+
+
+def ground_multiplicity(z: int, charge: int) -> int | None:
+    """Return 2S+1 of the ground level of a free atom, or None where it is not known."""
+    from checker.chemistry.configurations import ground_level
+
+    try:
+        return ground_level(z, charge).multiplicity
+    except NotDerivable:
+        return None

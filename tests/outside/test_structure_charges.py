@@ -1,7 +1,8 @@
 """Implied charges against published sets: each species must be allowed the charge and spin that were published.
 
 DBH24: J. Zheng, Y. Zhao, D. G. Truhlar, J. Chem. Theory Comput. 3, 569 (2007), reactants, products and transition
-structures. G2: L. A. Curtiss et al., J. Chem. Phys. 106, 1063 (1997). S22 and S26: P. Jurecka et al., Phys. Chem. Chem. Phys. 8, 1985 (2006), complexes of closed shells.
+structures. G2: L. A. Curtiss et al., J. Chem. Phys. 106, 1063 (1997). S22 and S26: P. Jurecka et al., Phys. Chem.
+Chem. Phys. 8, 1985 (2006), complexes of closed shells.
 All as ASE ships them.
 """
 

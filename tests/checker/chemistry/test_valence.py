@@ -7,7 +7,8 @@ import pytest
 from ase.build import molecule
 from shapes import Structure, joined, sodium_with_six_waters, star, structure
 
-from checker.chemistry.valence import Kind, Valence, assign_valences
+from checker.chemistry.sites import Kind
+from checker.chemistry.valence import Valence, assign_valences
 
 IONS = [
     pytest.param(star("N", "H", "tetrahedron", 1.02), +1, id="NH4+"),
