@@ -119,7 +119,9 @@ def _candidates(matrices: Floats, handedness: Ints, orders: Ints, symbol: str, s
     if not marks.types:
         return np.eye(3)[None]
     axes = axes_of(matrices)
-    on = [_both_ways(axes[(handedness == hand) & (orders == order)], slack) for hand, order in marks.types]
+    has_axis = np.abs(axes).sum(axis=1) > 0.5  # the inversion has none
+    types = [has_axis & (handedness == hand) & (orders == order) for hand, order in marks.types]
+    on = [_both_ways(axes[members], slack) for members in types]
     if len(on) == 1:
         return np.array([_nearest_frame(marks.axes[:, 0], direction) for direction in on[0]]).reshape(-1, 3, 3)
     first, second = np.nonzero(np.abs(on[0] @ on[1].T) < slack)

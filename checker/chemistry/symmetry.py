@@ -15,6 +15,7 @@ import numpy as np
 from checker.chemistry import levels
 from checker.chemistry.axes import placements
 from checker.chemistry.bodies import Body, Floats, Ints, body_of
+from checker.chemistry.descent import abelian_subgroups
 from checker.chemistry.fitting import Fit, settled
 from checker.chemistry.frames import Placement, diagonal_subgroup, permutations_among, place
 from checker.chemistry.irreps import point_group
@@ -47,7 +48,7 @@ class Symmetry:
     tolerance : angstrom.
     axis : (3,) unit vector along a linear molecule; None for the others.
     axes : "as-given" or "mulliken": how labels are bound to axes.
-    abelian_choice : "D2" or "C2v", for the abelian subgroup of Td and D2d.
+    abelian_choice : "D2" or "C2v", for the abelian subgroup of Td and of Dnd with an even axis.
 
     """
 
@@ -81,13 +82,15 @@ class Symmetry:
         placed: Placement | None
         if not isinstance(self._fit, Fit):
             placed = self.subgroup(CONTINUOUS[self.group], self.axes)
-        elif self.group in ("Td", "D2d") and self.abelian_choice == "C2v":
-            placed = self._placed("C2v", self.operations)
         else:
             symbol, indices = diagonal_subgroup(self.group)
-            placed = (
-                self._placed(symbol, self.operations[list(indices)]) if symbol != self.group else self.placement
-            )
+            choices = [choice.symbol for choice in abelian_subgroups(self.group)]
+            if self.abelian_choice != symbol and self.abelian_choice in choices:
+                placed = self._placed(self.abelian_choice, self.operations)
+            elif symbol == self.group:
+                placed = self.placement
+            else:
+                placed = self._placed(symbol, self.operations[list(indices)])
         assert placed is not None, self.group
         return placed
 
@@ -176,7 +179,7 @@ def find_symmetry(
     coordinates : (n, 3) angstrom.
     tolerance : angstrom; how far an atom may lie from its place in an exactly symmetric body.
     axes : "as-given" or "mulliken".
-    abelian_choice : "D2" or "C2v", for the abelian subgroup of Td and D2d.
+    abelian_choice : "D2" or "C2v", for the abelian subgroup of Td and of Dnd with an even axis.
 
     Raises
     ------
