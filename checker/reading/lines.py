@@ -45,11 +45,17 @@ class LineStream:
         self.number += len(taken)
         return taken
 
-    def give_back(self, lines: list[bytes]) -> None:
-        """Put lines that were just taken back in front."""
-        self._lines[: self._next] = lines
-        self._next = 0
-        self.number -= len(lines)
+    def give_back(self, n: int) -> None:
+        """Put the last `n` lines that were just taken back in front."""
+        self._next -= n
+        self.number -= n
+
+    def peek(self) -> bytes | None:
+        """Return the next line without taking it; None at the end and before a line that cannot be read."""
+        while self._next == len(self._lines):
+            if not self._read_on():
+                return None
+        return self._lines[self._next]
 
     def skip_blank(self) -> bool:
         """Go to the next line that is not blank; return whether there is one, readable or not."""

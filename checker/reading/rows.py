@@ -53,8 +53,9 @@ def _read_at_once(rows: list[Any], scale: float) -> Geometry | None:
     symbols, *axes = zip(*rows, strict=True)
     if not (_all_of(symbols, {str, int}) and all(_all_of(axis, {int, float}) for axis in axes)):
         return None
-    known = {written: _nuclide(written) for written in set(symbols)}
-    if None in known.values():
+    distinct = set(symbols)
+    known = {written: found for written in distinct if (found := _nuclide(written))}
+    if len(known) < len(distinct):
         return None
     try:
         coordinates = np.array(axes, dtype=float).T * scale
@@ -62,7 +63,7 @@ def _read_at_once(rows: list[Any], scale: float) -> Geometry | None:
         return None
     if not np.abs(coordinates).max() <= MAX_COORDINATE_ANGSTROM:  # so written that NaN fails too
         return None
-    return geometry_of((found for s in symbols if (found := known[s])), np.ascontiguousarray(coordinates))
+    return geometry_of((known[written] for written in symbols), np.ascontiguousarray(coordinates))
 
 
 def _all_of(values: Sequence[object], types: set[type]) -> bool:

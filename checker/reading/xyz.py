@@ -17,7 +17,7 @@ from checker.reading.faults import in_order
 from checker.reading.limits import BLOCK_ROWS, MAX_COMPLAINTS_PER_LIST, MAX_FRAME_ATOMS
 from checker.reading.lines import BadLine, LineStream
 from checker.reading.places import FramePlaces
-from checker.reading.words import plural, quoted
+from checker.reading.words import plural, shortened
 from checker.reading.xyz_rows import Rows, is_count_line, read_row, read_rows
 
 REST_NOT_READ = "; the rest of the file was not read"
@@ -135,17 +135,19 @@ def _read_frame(draft: _Draft, lines: LineStream) -> None:
 
 def _read_count(draft: _Draft, lines: LineStream) -> int:
     (line,) = lines.take(1)
+    written = line.strip()
+    if is_count_line(line) and len(written) <= 18 and 0 < int(written) <= MAX_FRAME_ATOMS:
+        return int(written)
     column = len(line) - len(line.lstrip()) + 1
-    shown = quoted(line.strip().decode("utf-8", "replace"))
-    if not is_count_line(line):
-        message = f"expected the number of atoms alone on this line, found {shown}{REST_NOT_READ}"
-    elif len(line.strip()) > 18 or int(line) > MAX_FRAME_ATOMS:
+    shown = shortened(written.decode("utf-8", "replace"))
+    if is_count_line(line) and not written.strip(b"0"):
+        draft.complain("the count line says 0 atoms; a frame needs at least one", draft.first_line, column)
+        return 0
+    if is_count_line(line):
         most = f"at most {MAX_FRAME_ATOMS:,} a frame are read"
-        message = f"the count line says {shown[1:-1]} atoms, but {most}{REST_NOT_READ}"
+        message = f"the count line says {shown} atoms, but {most}{REST_NOT_READ}"
     else:
-        if not int(line):
-            draft.complain("the count line says 0 atoms; a frame needs at least one", draft.first_line, column)
-        return int(line)
+        message = f"expected the number of atoms alone on this line, found '{shown}'{REST_NOT_READ}"
     draft.complain(message, draft.first_line, column)
     raise _OutOfStep
 
@@ -173,32 +175,29 @@ def _read_atoms(draft: _Draft, lines: LineStream, layout: Layout) -> None:
         part = read_rows(rows, layout)
         draft.add(part, rows)
         if part.n < len(rows):
-            lines.give_back(rows[part.n :])
+            lines.give_back(len(rows) - part.n)
             return
 
 
 def _skip_surplus(lines: LineStream, layout: Layout) -> int:
     """Skip and count the atom rows behind those of the count line."""
     n_surplus = 0
-    try:
-        while lines.skip_blank():
-            (row,) = lines.take(1)
-            if read_row(row, layout) is None:
-                lines.give_back([row])
-                break
-            n_surplus += 1
-    except BadLine:  # it will be met as the next frame's
-        pass
+    while lines.skip_blank():
+        row = lines.peek()
+        if row is None or read_row(row, layout) is None:
+            break
+        lines.take(1)
+        n_surplus += 1
     return n_surplus
 
 
 def _seek_count_line(lines: LineStream) -> None:
     """Go to the next line that can be a count line, or to the end."""
     while lines.skip_blank():
-        (line,) = lines.take(1)
-        if is_count_line(line):
-            lines.give_back([line])
+        line = lines.peek()
+        if line is not None and is_count_line(line):
             return
+        lines.take(1)
 
 
 def _disagreement(draft: _Draft, n_rows: int) -> str:

@@ -82,27 +82,29 @@ def _read_at_once(rows: list[bytes], layout: Layout) -> Rows | None:
     if not split or min(map(len, split)) < layout.width:
         return None
     columns = list(zip(*split, strict=False))  # a row may have columns of its own at its end
-    known = {written: _nuclide(written) for written in set(columns[layout.element])}
-    if None in known.values():
+    symbols = columns[layout.element]
+    distinct = set(symbols)
+    known = {written: found for written in distinct if (found := _nuclide(written))}
+    if len(known) < len(distinct):
         return None
+    xs, ys, zs = columns[layout.x : layout.x + 3]
     try:
-        axes = np.array([reals(axis) for axis in columns[layout.x : layout.x + 3]])
+        axes = np.array(reals(xs + ys + zs)).reshape(3, len(rows))
     except ValueError:
         return None
     if not np.abs(axes).max() <= MAX_COORDINATE_ANGSTROM:  # so written that NaN fails too
         return None
-    found = [known[written] for written in columns[layout.element]]
-    return _rows([nuclide for nuclide in found if nuclide], np.ascontiguousarray(axes.T), rows, layout)
+    return _rows([known[written] for written in symbols], np.ascontiguousarray(axes.T), rows, layout)
 
 
 def _rows(found: Sequence[Nuclide], coordinates: NDArray[np.float64], rows: list[bytes], layout: Layout) -> Rows:
     numbers, mass_numbers = zip(*found, strict=True)
     return Rows(
-        n=len(found),
-        numbers=np.array(numbers, dtype=np.int64),
-        mass_numbers=np.array(mass_numbers, dtype=np.int64),
-        coordinates=coordinates,
-        columns=np.array(_columns(rows, layout.element), dtype=np.int32),
+        len(found),
+        np.array(numbers, dtype=np.int64),
+        np.array(mass_numbers, dtype=np.int64) if any(mass_numbers) else np.zeros(len(found), dtype=np.int64),
+        coordinates,
+        np.array(_columns(rows, layout.element), dtype=np.int32),
     )
 
 
