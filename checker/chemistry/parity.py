@@ -129,11 +129,15 @@ def _copies(numbers: Ints, bonds: Bonds) -> tuple[int, ...]:
 
 
 def _normalised(causes: Iterator[Cause]) -> tuple[Cause, ...]:
-    """Rank the causes and make their weights shares; the tail is cut, but never below three."""
+    """Rank the causes and make their weights shares; the tail is cut, that of the first three later."""
     ranked = sorted(causes, key=lambda cause: -cause.weight)[:MOST_CAUSES]
     weights = [cause.weight**SHARPNESS for cause in ranked]
     total = sum(weights)
-    kept = sum(1 for place, weight in enumerate(weights) if place < LEAST_CAUSES or weight >= LEAST_SHARE * total)
+    kept = sum(
+        1
+        for place, weight in enumerate(weights)
+        if weight >= (LEAST_SHARE if place >= LEAST_CAUSES else LEAST_SHARE / 10) * total
+    )
     share = sum(weights[:kept])
     return tuple(
         replace(cause, weight=weight / share) for cause, weight in zip(ranked[:kept], weights, strict=False)

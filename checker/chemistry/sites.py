@@ -112,7 +112,7 @@ class _Sites:
         """One open valence: atoms with lone pairs and bare carbon ends close as anions, others either way."""
         if atom in self.lewis.cations:
             return Kind.CATION
-        if self._in_nitrogen_oxide(atom):
+        if self._may_well_be_a_cation(atom, z):
             return Kind.FLEXIBLE
         if z in PNICTOGENS | CHALCOGENS | HALOGENS:
             return Kind.ANION
@@ -123,15 +123,20 @@ class _Sites:
         is_bare_end = z in TETRELS and self._degree(atom) == 1 and not in_pair_of_two
         return Kind.ANION if is_bare_end else Kind.FLEXIBLE
 
-    def _in_nitrogen_oxide(self, atom: int) -> bool:
-        """NO and linear NO2: nitrosyl and nitryl cations are as common as the anions."""
-        centre = atom if int(self.numbers[atom]) == 7 else self.bonds.neighbours[atom][0]
-        if int(self.numbers[centre]) != 7:
+    def _may_well_be_a_cation(self, atom: int, z: int) -> bool:
+        """Doubt the anion where the cation is as common: NO, linear NO2, diazonium, nitroxides, phosphenium."""
+        if z in PNICTOGENS - {7}:
+            return True
+        if self._degree(atom) != 1:
             return False
-        others = self.bonds.neighbours[centre]
-        if any(int(self.numbers[other]) != 8 or self._degree(other) != 1 for other in others):
+        (other,) = self.bonds.neighbours[atom]
+        z_other = int(self.numbers[other])
+        if self._degree(other) == 1:
+            pair = {z, z_other}
+            return bool(pair & PNICTOGENS) and bool(pair & CHALCOGENS)
+        if z_other != 7 or other in self.lewis.donors:
             return False
-        return len(others) == 1 or (len(others) == 2 and self.lewis.is_linear(centre))
+        return self.lewis.is_linear(other) if self._degree(other) == 2 else z == 8 and self._degree(other) == 3
 
     def _lone_atom(self, atom: int, z: int, slots: int) -> None:
         """Judge an atom without a covalent bond: an ion if it has company."""

@@ -132,6 +132,43 @@ def test_a_guanidinium_ion_is_a_cation() -> None:
     assert [site.kind for site in valence.sites] == [Kind.CATION]
 
 
+@pytest.mark.parametrize(
+    ("ring", "on", "symbol", "length", "charge"),
+    [
+        pytest.param("C5H5N", 7, "O", 1.30, 0, id="pyridine_N-oxide"),
+        pytest.param("C5H5N", 7, "H", 1.01, +1, id="pyridinium"),
+        pytest.param("C6H6", 6, "O", 1.27, -1, id="phenoxide"),
+        pytest.param("C4H4NH", 7, None, 0.0, -1, id="pyrrolide"),
+    ],
+)
+def test_charges_delocalised_over_a_ring(
+    ring: str, on: int, symbol: str | None, length: float, charge: int
+) -> None:
+    """One atom of a ring gets a substituent, in place of its hydrogen if it has one."""
+    atoms = molecule(ring)
+    numbers, places = np.array(atoms.numbers), np.array(atoms.positions)
+    host = int(np.flatnonzero(numbers == on)[0])
+    outward = places[host] - places[numbers != 1].mean(axis=0)
+    near = np.linalg.norm(places - places[host], axis=1) < 1.2
+    kept = ~(near & (numbers == 1))
+    made = (numbers[kept], places[kept])
+    if symbol is not None:
+        (extra,), _ = structure([(symbol, 0.0, 0.0, 0.0)])
+        site = places[host] + length * outward / np.linalg.norm(outward)
+        made = (np.append(made[0], extra), np.vstack([made[1], site]))
+    assert of(made).implied_charge == charge
+
+
+def test_a_nitroxide_and_a_diazonium_ion_are_left_open() -> None:
+    """R2N-O is radical, cation or anion; N2H+ on a line is a cation, bent it is the anion or radical."""
+    nitroxide = [("N", 0.0, 0.0, 0.0), ("O", 1.28, 0.0, 0.0), ("H", -0.5, 0.87, 0.0), ("H", -0.5, -0.87, 0.0)]
+    assert of(structure(nitroxide)).implied_charge is None
+    on_a_line = [("N", 0.0, 0.0, 0.0), ("N", 0.0, 0.0, 1.09), ("H", 0.0, 0.0, -1.03)]
+    assert of(structure(on_a_line)).implied_charge is None
+    bent = [("N", 0.0, 0.0, 0.0), ("N", 0.0, 0.0, 1.19), ("H", 0.0, 0.93, -0.46)]
+    assert of(structure(bent)).implied_charge == -1
+
+
 def test_ions_side_by_side_add_up() -> None:
     salt = joined(star("N", "H", "tetrahedron", 1.02), star("S", "O", "tetrahedron", 1.49))
     assert of(salt).implied_charge == -1
