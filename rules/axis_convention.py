@@ -49,7 +49,7 @@ def _other_axes(facts: Facts, others: tuple[Relabelling, ...]) -> Finding:
         at="occupations",
         message=f"the occupation fits this geometry only with {first.words} ({words})",
         why=f"Labels hold for the {_frame_words(facts)}; with these the occupation is that of no ground state.",
-        confidence=0.95 if len(others) == 1 else 0.8,
+        confidence=_confidence(facts, len(others)),
         evidence={
             "point_group": irreps.group,
             "full_group": irreps.body_group,
@@ -60,6 +60,12 @@ def _other_axes(facts: Facts, others: tuple[Relabelling, ...]) -> Finding:
         },
         repairs=tuple(repair for other in others for repair in _repairs(facts, other, 1 / len(others))),
     )
+
+
+def _confidence(facts: Facts, n_choices: int) -> float:
+    """Return more where partners of a level are at odds than where the valence shells alone speak."""
+    surest = 0.7 if facts.irreps.readings(*facts.irreps.electrons) is None else 0.95
+    return surest if n_choices == 1 else 0.8 * surest
 
 
 def _frame_words(facts: Facts) -> str:

@@ -9,10 +9,10 @@ Speaks: the same with B1 = 2.
 Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., secs. 6.2-6.3 (from memory).
 """
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator
 
 from checker.facts import Facts
-from checker.findings import Finding, Grade, Json
+from checker.findings import Finding, Grade
 from checker.registry import Rule
 
 
@@ -20,9 +20,9 @@ def judge(facts: Facts) -> Iterator[Finding]:
     """Compare every irrep of every table with its functions."""
     for key, electrons in _tables(facts):
         functions = facts.irreps.functions
-        beyond = {name: n for name, n in electrons.items() if n > functions[name]}
-        if beyond:
-            yield _too_many(facts, key, beyond, functions)
+        for name, n in electrons.items():
+            if n > functions[name]:
+                yield _too_many(facts, key, name, n, functions[name])
 
 
 def _tables(facts: Facts) -> Iterator[tuple[str, dict[str, int]]]:
@@ -39,19 +39,16 @@ def _tables(facts: Facts) -> Iterator[tuple[str, dict[str, int]]]:
         yield "occupations.paired" if occupations.paired else "occupations.unpaired", total
 
 
-def _too_many(facts: Facts, key: str, beyond: Mapping[str, int], functions: Mapping[str, int]) -> Finding:
+def _too_many(facts: Facts, key: str, name: str, n_occupied: int, n_functions: int) -> Finding:
     basis = facts.job.basis
     assert basis is not None
-    said = ", ".join(f"{name} holds {n} orbitals of {functions[name]}" for name, n in beyond.items())
+    group = facts.irreps.group
+    functions = "1 function" if n_functions == 1 else f"{n_functions or 'no'} functions"
     return Finding(
         at=key,
-        message=f"{said}: {basis.name} has no more functions of that symmetry in {facts.irreps.group}",
+        message=f"{n_occupied} orbitals of {name} are occupied in {group}, and {basis.name} has {functions} of it",
         why="Each orbital is made of the functions of its irrep, and there are as many orbitals as functions.",
-        evidence={
-            "point_group": facts.irreps.group,
-            "occupied": dict[str, Json](beyond),
-            "functions": {name: functions[name] for name in beyond},
-        },
+        evidence={"point_group": group, "irrep": name, "occupied": n_occupied, "functions": n_functions},
     )
 
 

@@ -60,8 +60,8 @@ def test_halts_what_it_does_not(
 
 def test_says_which_irrep_and_how_many() -> None:
     (finding,) = judged(WATER, "C2v", {"paired": {"A1": 3, "B1": 2}}, "STO-3G")
-    assert finding.message == ("B1 holds 2 orbitals of 1: STO-3G has no more functions of that symmetry in C2v")
-    assert finding.evidence == {"point_group": "C2v", "occupied": {"B1": 2}, "functions": {"B1": 1}}
+    assert finding.message == "2 orbitals of B1 are occupied in C2v, and STO-3G has 1 function of it"
+    assert finding.evidence == {"point_group": "C2v", "irrep": "B1", "occupied": 2, "functions": 1}
 
 
 @pytest.mark.parametrize(
