@@ -85,7 +85,7 @@ def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
     try:
         command = typer.main.get_command(app)
         status = command.main(list(argv) or ["--help"], prog_name=PROGRAM, standalone_mode=False, obj=stdin)
-    except KeyboardInterrupt:
+    except (KeyboardInterrupt, typer.Abort):
         return INTERRUPTED
     except ReaderLeft:
         _close_quietly()
@@ -235,8 +235,6 @@ def _complain(*sentences: str) -> int:
 
 def _usage_sentence(error: Exception) -> str | None:
     """Return what is wrong with the arguments, if that is what typer's error is about; else None."""
-    if isinstance(error, typer.Abort):
-        return "stopped, as there was nothing more to read"
     if not isinstance(error, _USAGE_ERRORS):
         return None
     option = getattr(error, "option_name", None)
