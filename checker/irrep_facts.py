@@ -4,6 +4,7 @@ The group of the deck lies in the group of the body in one orientation, by which
 counted in either. A fact that cannot be worked out raises `NotDerivable` with the reason.
 """
 
+import contextlib
 from collections.abc import Callable, Mapping
 from functools import cached_property
 from typing import TYPE_CHECKING
@@ -161,11 +162,10 @@ class IrrepFacts:
 
     @cached_property
     def _limits(self) -> tuple[dict[str, int] | None, ...]:
-        """Levels of each irrep of the body's group: in a minimal picture, then in the basis, else any."""
-        try:
-            return self.minimal_body_levels, self.body_levels
-        except NotDerivable:
-            return self.minimal_body_levels, None
+        """Levels of each irrep of the body's group: in a minimal picture, in the basis if it is known, any number."""
+        with contextlib.suppress(NotDerivable):
+            return self.minimal_body_levels, self.body_levels, None
+        return self.minimal_body_levels, None
 
     def readings(self, alpha: Counts, beta: Counts) -> tuple["OpenLevel", ...] | None:
         """Return the open levels that an occupation may mean, likeliest first; None where it fills whole levels.

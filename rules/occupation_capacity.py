@@ -43,10 +43,11 @@ def _too_many(facts: Facts, key: str, name: str, n_occupied: int, n_functions: i
     basis = facts.job.basis
     assert basis is not None
     group = facts.irreps.group
+    orbitals = f"1 orbital of {name} is" if n_occupied == 1 else f"{n_occupied} orbitals of {name} are"
     functions = "1 function" if n_functions == 1 else f"{n_functions or 'no'} functions"
     return Finding(
         at=key,
-        message=f"{n_occupied} orbitals of {name} are occupied in {group}, and {basis.name} has {functions} of it",
+        message=f"{orbitals} occupied in {group}, and {basis.name} has {functions} of it",
         why="Each orbital is made of the functions of its irrep, and there are as many orbitals as functions.",
         evidence={"point_group": group, "irrep": name, "occupied": n_occupied, "functions": n_functions},
     )

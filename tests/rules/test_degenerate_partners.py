@@ -51,6 +51,8 @@ P = {"Ag": 2}
                      id="dioxygen_in_its_own_group"),
         pytest.param(along_z("C", "O", 1.13), (0, 1), "C2v", CO_LIKE, CO_LIKE, id="carbon_monoxide"),
         pytest.param(METHANE, (0, 1), "D2", METHANE_D2, METHANE_D2, id="methane_in_D2"),
+        pytest.param([("O", 0.0, 0.0, 0.1), ("H", 0.0, 0.76, -0.5), ("H", 0.0, -0.76, -0.5)], (0, 1), "C2v",
+                     {"A1": 3, "A2": 1, "B2": 1}, {"A1": 3, "A2": 1, "B2": 1}, id="water_has_nothing_degenerate"),
         pytest.param(METHANE, (0, 1), "C1", {"A": 5}, {"A": 5}, id="methane_without_symmetry"),
         pytest.param([("N", 0.0, 0.0, 0.0)], (0, 4), "D2h", {**P, "B1u": 1, "B2u": 1, "B3u": 1}, P,
                      id="nitrogen_atom_half_filled"),
