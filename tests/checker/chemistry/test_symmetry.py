@@ -10,7 +10,7 @@ from checker.chemistry.closure import Closed, Element, enlarged, symbol_of, triv
 from checker.chemistry.descent import abelian_subgroups
 from checker.chemistry.frames import diagonal_subgroup
 from checker.chemistry.irreps import common_groups, point_group
-from checker.chemistry.symmetry import MOST_ATOMS, deviation_from, find_symmetry
+from checker.chemistry.symmetry import MOST_ATOMS, find_symmetry
 from checker.errors import NotDerivable
 
 MOLECULES = {name: body(rows) for name, _, _, rows in NAMED}
@@ -201,11 +201,32 @@ def test_subgroups_of_a_line_and_of_a_point() -> None:
 def test_symmetrising_to_a_subgroup_only() -> None:
     kinds, places = shaken(MOLECULES["benzene"], 0.004, seed=1)
     found = find_symmetry(kinds, places)
-    placed = found.subgroup("C6")
-    assert placed is not None
-    symmetrised, deviation = deviation_from(placed, places)
+    symmetrised = found.symmetrised_to("C6")
+    assert symmetrised is not None
+    coordinates, deviation = symmetrised
     assert 0 < deviation <= 0.01
-    assert find_symmetry(kinds, symmetrised, tolerance=1e-6).group in ("C6", "C6h")
+    assert find_symmetry(kinds, coordinates, tolerance=1e-6).group in ("C6", "C6h")
+    assert found.symmetrised_to("C5") is None
+    whole = found.symmetrised_to("D6h")
+    assert whole is not None
+    assert whole[1] == found.deviation_angstrom
+
+
+def test_symmetrising_to_a_line_without_a_centre() -> None:
+    kinds, places = carbon_dioxide(0.012)
+    places = places + np.array([[0.003, 0, 0], [-0.0015, 0, 0], [-0.0015, 0, 0]])
+    found = find_symmetry(kinds, places)
+    assert found.group == "D∞h"
+    symmetrised = found.symmetrised_to("C∞v")
+    assert symmetrised is not None
+    assert symmetrised[1] == pytest.approx(0.003, abs=1e-5)
+    assert find_symmetry(kinds, symmetrised[0], tolerance=1e-4).group == "C∞v"
+
+
+def test_another_tolerance() -> None:
+    found = find_symmetry(*square(0.05))
+    assert found.within(0.03).group == "D4h"
+    assert found.within(1e6).tolerance < 1.0
 
 
 def test_the_symbol_needs_as_many_improper_operations_as_rotations() -> None:
