@@ -15,7 +15,7 @@ from checker.chemistry import ledger as books
 from checker.deck import Aside
 from checker.elements import number_of, symbol_of
 from checker.errors import NotDerivable
-from checker.findings import BasisBook, Expected, Ledger
+from checker.findings import BasisBook, Edit, Expected, Ledger
 from checker.model import Job
 
 if TYPE_CHECKING:
@@ -30,6 +30,7 @@ if TYPE_CHECKING:
     from checker.irrep_facts import IrrepFacts
 
 UNSTATED_MULTIPLICITY = "the deck states no multiplicity"
+PLACE_DIGITS = 6  # of the coordinates that a repair writes
 
 
 class Facts:
@@ -271,6 +272,7 @@ class Facts:
             published={z: tuple(count.electrons for count in published_counts(z)) for z in replaced},
             valence=self.valence,
             numbering=self.real_indices + 1,
+            unpaired_in_core=self.unpaired_in_core,
         )
 
     @cached_property
@@ -291,10 +293,28 @@ class Facts:
         """The geometry's point group and frame, ghosts told from atoms; not derivable where it is not settled."""
         from checker.chemistry.symmetry import find_symmetry
 
+        if self.is_periodic:
+            raise NotDerivable("a geometry with a cell has no point group of its own")
         stated = self.job.symmetry
         kinds = 2 * self.numbers + self.is_ghost
         choice = "C2v" if stated.point_group and stated.point_group.strip().casefold() == "c2v" else "D2"
         return find_symmetry(kinds, self.coordinates, axes=stated.axes, abelian_choice=choice)
+
+    def atoms_at(self, coordinates: NDArray[np.float64]) -> tuple[Edit, ...]:
+        """Return the edits that put all atoms of the deck, ghosts included, at other places (n, 3) angstrom."""
+        from checker.chemistry.contacts import BOHR_ANGSTROM
+
+        unit = BOHR_ANGSTROM if self.job.species.length_unit == "bohr" else 1.0
+        places = (np.round(coordinates / unit, PLACE_DIGITS) + 0.0).tolist()
+        isotopes = {2: "D", 3: "T"}
+        symbols = [
+            isotopes.get(mass, symbol_of(z))
+            for mass, z in zip(self.job.species.atoms.mass_numbers.tolist(), self.numbers.tolist(), strict=True)
+        ]
+        return tuple(
+            Edit(f"species.atoms[{i}]", [symbol, *place])
+            for i, (symbol, place) in enumerate(zip(symbols, places, strict=True))
+        )
 
     @cached_property
     def irreps(self) -> "IrrepFacts":
@@ -335,12 +355,21 @@ class Facts:
     @property
     def ground_level_confidence(self) -> float:
         """How sure the ground level of a free atom is: measured, predicted or derived."""
-        return {"measured": 0.99, "predicted": 0.8}.get(self.ground_level.origin, 0.9)
+        return {"measured": 0.99, "predicted": 0.8, "disputed": 0.6}.get(self.ground_level.origin, 0.9)
 
     @cached_property
     def f_electrons_in_core(self) -> int:
         """Open-shell f electrons per atom that a core potential replaces, at most over the elements present."""
         return max((self.f_in_core_of(z) for z in self.elements), default=0)
+
+    @cached_property
+    def unpaired_in_core(self) -> int:
+        """Unpaired f electrons, of all atoms, that core potentials hold; not derivable as for `f_in_core_of`."""
+        from checker.chemistry.core_potentials import f_unpaired
+
+        if self.job.core_potential is None:
+            return 0
+        return sum(f_unpaired(self.f_in_core_of(z)) * int((self.real_numbers == z).sum()) for z in self.elements)
 
     def f_in_core_of(self, z: int) -> int:
         """Return the electrons of an open f shell that the core potential of one of the elements present holds.

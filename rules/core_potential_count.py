@@ -136,8 +136,7 @@ def _judge_f_shell(facts: Facts, z: int) -> Iterator[Finding | NotJudged]:
         return
     symbol, replaced = symbol_of(z), facts.replaced_per_atom[z]
     shell = f"{5 if z >= FIRST_WITH_5F else 4}f{n_f if n_f > 1 else ''}"
-    of_all = sum(f_unpaired(facts.f_in_core_of(other)) * _n_atoms(facts, other) for other in facts.elements)
-    still_counted = _still_counted(facts, of_all)
+    still_counted = _still_counted(facts, facts.unpaired_in_core)
     stated = facts.job.core_potential is not None and symbol in facts.job.core_potential.replaced
     yield Finding(
         at=f"core_potential.replaced.{symbol}" if stated else "core_potential.name",
@@ -152,7 +151,7 @@ def _judge_f_shell(facts: Facts, z: int) -> Iterator[Finding | NotJudged]:
             "f_electrons_in_core": n_f,
             "unpaired_in_core": n_unpaired * _n_atoms(facts, z),
         },
-        repairs=_f_shell_repairs(facts, z, of_all) if still_counted else (),
+        repairs=_f_shell_repairs(facts, z, facts.unpaired_in_core) if still_counted else (),
     )
 
 

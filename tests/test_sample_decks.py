@@ -8,8 +8,8 @@ import re
 from pathlib import Path
 
 import pytest
-from builders import TODAY
 
+from builders import TODAY
 from checker.api import check_path
 from checker.findings import DeckReport
 

@@ -36,6 +36,8 @@ PRIOR_HYDROGEN_SURPLUS = 0.5
 PRIOR_ATOM_DOUBLED = 30.0
 PRIOR_CORE_UNPUBLISHED = 3.0
 PRIOR_CORE_PUBLISHED = 0.03
+PRIOR_CORE_SPIN = 12.0
+"""Where a core potential holds an open f shell, whose spin is easily counted all the same."""
 
 
 class Slip(enum.StrEnum):
@@ -84,6 +86,7 @@ def rank_causes(
     published: Mapping[int, Sequence[int]] | None = None,
     valence: Valence | None = None,
     numbering: Ints | None = None,
+    unpaired_in_core: int = 0,
 ) -> tuple[Cause, ...]:
     """Return the slips that may have led to a multiplicity that the electrons do not allow, likeliest first.
 
@@ -97,6 +100,7 @@ def rank_causes(
     published : counts that published potentials use, by atomic number.
     valence : as found by `assign_valences`; found here if left out.
     numbering : (n,) the numbers that people know the atoms by; 1, 2, ... if left out.
+    unpaired_in_core : unpaired f electrons, of all atoms, that the core potentials hold.
 
     Raises
     ------
@@ -113,7 +117,9 @@ def rank_causes(
     known_by = np.arange(1, len(numbers) + 1) if numbering is None else numbering
     if copies or valence is None:
         valence = assign_valences(numbers[kept], coordinates[kept], None if copies else bonds)
-    job = _Job(numbers[kept], charge, multiplicity, cores, published or {}, copies, kept, known_by)
+    job = _Job(
+        numbers[kept], charge, multiplicity, cores, published or {}, copies, kept, known_by, unpaired_in_core
+    )
     return _normalised(job.causes(valence))
 
 
@@ -156,9 +162,11 @@ class _Job:
     copies: tuple[int, ...]
     kept: Ints
     numbering: Ints
+    unpaired_in_core: int
 
     def causes(self, valence: Valence) -> Iterator[Cause]:
         yield from self._doubled(valence)
+        yield from self._core_spin(valence)
         yield from self._multiplicities(valence)
         yield from self._charges(valence)
         yield from self._hydrogens(valence)
@@ -196,13 +204,24 @@ class _Job:
     def _multiplicities(self, valence: Valence) -> Iterator[Cause]:
         for multiplicity in (self.multiplicity - 1, self.multiplicity + 1):
             weight = self._weight(valence, self.charge, multiplicity) if multiplicity >= 1 else 0.0
-            if weight:
+            if weight and self.multiplicity - multiplicity != self.unpaired_in_core:
                 yield Cause(
                     kind=Slip.MULTIPLICITY,
                     weight=PRIOR_MULTIPLICITY * weight,
                     reason=why_multiplicity(self._wording(valence), multiplicity),
                     multiplicity=multiplicity,
                 )
+
+    def _core_spin(self, valence: Valence) -> Iterator[Cause]:
+        """Blame an f spin that was counted although the core potentials hold it."""
+        multiplicity = self.multiplicity - self.unpaired_in_core
+        if self.unpaired_in_core % 2 and multiplicity >= 1:
+            yield Cause(
+                kind=Slip.MULTIPLICITY,
+                weight=PRIOR_CORE_SPIN * self._weight(valence, self.charge, multiplicity),
+                reason=f"{self.unpaired_in_core} of the unpaired electrons are f electrons inside the core potential",
+                multiplicity=multiplicity,
+            )
 
     def _charges(self, valence: Valence) -> Iterator[Cause]:
         for charge in (self.charge - 1, self.charge + 1):

@@ -43,6 +43,14 @@ def test_the_likeliest_cause(made: Structure, charge: int, multiplicity: int, fi
         assert brief(causes[0]) == first
 
 
+def test_f_electrons_inside_the_core_were_counted() -> None:
+    """Gadolinium(III) with 53 electrons replaced holds 4f7 in its core: the octet was counted, a singlet is left."""
+    gadolinium = np.array([64]), np.zeros((1, 3))
+    causes = rank_causes(*gadolinium, 3, 8, replaced={64: 53}, unpaired_in_core=7)
+    assert brief(causes[0]) == (Slip.MULTIPLICITY, 1)
+    assert causes[0].reason == "7 of the unpaired electrons are f electrons inside the core potential"
+
+
 def test_weights_fall_and_add_up_to_one() -> None:
     weights = [cause.weight for cause in rank_causes(*g2("CH3OH"), 1, 1)]
     assert weights == sorted(weights, reverse=True)
