@@ -166,6 +166,12 @@ def _too_large(path: KeyPath, error: ErrorDetails) -> str:
     return f"{key_text(path)} is too large; the whole numbers of a deck have at most 18 digits"
 
 
+def _no_real(path: KeyPath, error: ErrorDetails) -> str:
+    if isinstance(error["input"], int) and not isinstance(error["input"], bool):  # too large for any float
+        return _too_large(path, error)
+    return _wrong_kind("a number")(path, error)
+
+
 def _not_finite(path: KeyPath, error: ErrorDetails) -> str:
     return f"{key_text(path)} is {described(error['input'])}, but must be a finite number"
 
@@ -188,7 +194,8 @@ _date = _wrong_kind("a date such as 2027-06-30")
 _SENTENCES: dict[str, Callable[[KeyPath, ErrorDetails], str]] = {
     "int_type": _wrong_kind("a whole number"),
     "int_from_float": _wrong_kind("a whole number"),
-    "float_type": _wrong_kind("a number"),
+    "int_parsing_size": _choice,  # of deck_version, the one choice among numbers
+    "float_type": _no_real,
     "finite_number": _not_finite,
     "string_type": _wrong_kind("text in quotes"),
     "string_too_short": _empty,

@@ -137,6 +137,12 @@ def test_error_in_species(line: str, message: str) -> None:
             (6, 1),
             "resources.memory_gb is the text '64', but must be a number; write 64, without quotes",
         ),
+        pytest.param(
+            f"[resources]\nhours = 1{'0' * 400}",
+            (6, 1),
+            "resources.hours is too large; the whole numbers of a deck have at most 18 digits",
+            id="beyond-all-floats",
+        ),
         pytest.param("[resources]\nhours = -1", (6, 1), "resources.hours is -1, but must be 0 or more"),
         pytest.param("[resources]\nhours = nan", (6, 1), "resources.hours is nan, but must be a finite number"),
         pytest.param(
@@ -215,7 +221,7 @@ def test_error_missing_tables_and_keys() -> None:
 
 
 def test_error_version_true_or_1_point_0_is_not_1() -> None:
-    for version in ("true", "1.0"):
+    for version in ("true", "1.0", "0"):
         (first, *_) = said(f"deck_version = {version}\n")
         assert first[2] == f"deck_version is {version}, but this program reads version 1; write deck_version = 1"
 
