@@ -56,6 +56,8 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
         findings=findings,
         not_judged=tuple(dict.fromkeys(not_judged)),
         ledger=facts.ledger,
+        symmetry=facts.symmetry_book,
+        basis=facts.basis_book,
         expected=facts.expected,
         rule_failed=any(finding.rule == "rule-failed" for finding in findings),
         atoms_file=_atoms_file(deck) if any(finding.numbered for finding in findings) else None,

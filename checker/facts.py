@@ -4,6 +4,7 @@ A fact that cannot be worked out raises `NotDerivable` with the reason; the engi
 Facts only expose what `chemistry/` works out on plain values.
 """
 
+import contextlib
 from collections.abc import Mapping
 from functools import cached_property
 from typing import TYPE_CHECKING
@@ -15,7 +16,7 @@ from checker.chemistry import ledger as books
 from checker.deck import Aside
 from checker.elements import number_of, symbol_of
 from checker.errors import NotDerivable
-from checker.findings import BasisBook, Edit, Expected, Ledger
+from checker.findings import BasisBook, Edit, Expected, Ledger, SymmetryBook
 from checker.model import Job
 
 if TYPE_CHECKING:
@@ -181,7 +182,10 @@ class Facts:
             form = self.job_basis.form
         except NotDerivable:
             return BasisBook(name=self.job.basis.name, form=self.job.basis.form)
-        return BasisBook(name=self.job.basis.name, n_functions=self.n_functions, form=form)
+        by_irrep = None
+        with contextlib.suppress(NotDerivable):
+            by_irrep = self.irreps.functions
+        return BasisBook(name=self.job.basis.name, n_functions=self.n_functions, form=form, by_irrep=by_irrep)
 
     @cached_property
     def ledger(self) -> Ledger:
@@ -299,6 +303,21 @@ class Facts:
         kinds = 2 * self.numbers + self.is_ghost
         choice = "C2v" if stated.point_group and stated.point_group.strip().casefold() == "c2v" else "D2"
         return find_symmetry(kinds, self.coordinates, axes=stated.axes, abelian_choice=choice)
+
+    @cached_property
+    def symmetry_book(self) -> SymmetryBook | None:
+        """The symmetry for the report, None where it is not settled."""
+        try:
+            symmetry = self.symmetry
+        except NotDerivable:
+            return None
+        return SymmetryBook(
+            point_group=symmetry.group,
+            abelian_subgroup=symmetry.abelian_group,
+            deviation_angstrom=symmetry.deviation_angstrom,
+            frame_note=symmetry.frame_note,
+            next_higher=symmetry.next_higher,
+        )
 
     def atoms_at(self, coordinates: NDArray[np.float64]) -> tuple[Edit, ...]:
         """Return the edits that put all atoms of the deck, ghosts included, at other places (n, 3) angstrom."""

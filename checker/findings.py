@@ -169,6 +169,24 @@ class BasisBook:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class SymmetryBook:
+    """The point group of the geometry, Schoenflies, and how far the geometry is from having it exactly.
+
+    Attributes
+    ----------
+    deviation_angstrom : the largest distance an atom would have to move for the group.
+    frame_note : how the coordinates' axes were turned into those that irrep labels refer to, in words.
+    next_higher : the next group above and its own deviation; None where none is near or it was not asked for.
+    """
+
+    point_group: str
+    abelian_subgroup: str
+    deviation_angstrom: float
+    frame_note: str
+    next_higher: tuple[str, float] | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class DeckReport:
     """All that is said of one deck; findings stand worst first, then by line and rule, accepted ones last.
 
@@ -182,6 +200,8 @@ class DeckReport:
     findings: tuple[PlacedFinding, ...]
     not_judged: tuple[NotJudged, ...] = ()
     ledger: Ledger | None = None
+    symmetry: SymmetryBook | None = None
+    basis: BasisBook | None = None
     expected: Expected | None = None
     rule_failed: bool = False
     atoms_file: str | None = None

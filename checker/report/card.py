@@ -2,7 +2,18 @@
 
 from collections.abc import Iterator
 
-from checker.findings import DeckReport, ElementBook, Expected, Grade, Json, Ledger, PlacedFinding, Verdict
+from checker.findings import (
+    BasisBook,
+    DeckReport,
+    ElementBook,
+    Expected,
+    Grade,
+    Json,
+    Ledger,
+    PlacedFinding,
+    SymmetryBook,
+    Verdict,
+)
 from checker.report.layout import Page, grade_style, verdict_style
 from checker.report.plain import counted, evidence, grade_counts, plain, signed
 
@@ -19,6 +30,10 @@ def card(report: DeckReport, page: Page) -> Iterator[str]:
         yield "\n"
     if report.ledger is not None:
         yield from _books(report.ledger, page, short=report.verdict is Verdict.CLEAR)
+    if report.symmetry is not None:
+        yield from page.entry("symmetry", _symmetry(report.symmetry))
+    if report.basis is not None:
+        yield from page.entry("basis", plain(_basis(report.basis)))
     if report.expected is not None:
         yield from _expected(report.expected, page)
     yield from _not_judged(report, page)
@@ -180,6 +195,27 @@ def _formula(books: tuple[ElementBook, ...]) -> str:
     first = [symbol for symbol in ("C", "H") if symbol in counts] if "C" in counts else []
     order = first + sorted(counts.keys() - set(first))
     return "".join(symbol + (str(counts[symbol]) if counts[symbol] > 1 else "") for symbol in order)
+
+
+def _symmetry(book: SymmetryBook) -> str:
+    """Return the group and how exact it is, the group above, and how labels are bound to axes."""
+    parts = [f"{book.point_group} within {book.deviation_angstrom:.4f} angstrom"]
+    if book.abelian_subgroup != book.point_group:
+        parts.append(f"abelian group {book.abelian_subgroup}")
+    if book.next_higher is not None:
+        group, deviation = book.next_higher
+        parts.append(f"next above {group} within {deviation:.4f} angstrom")
+    if book.point_group != "C1":
+        parts.append(f"labels: {book.frame_note}")
+    return "; ".join(parts)
+
+
+def _basis(book: BasisBook) -> str:
+    if book.n_functions is None:
+        return f"{book.name}: functions unknown"
+    by_irrep = ", ".join(f"{name} {n}" for name, n in (book.by_irrep or {}).items())
+    form = f", {book.form}" if book.form else ""
+    return f"{book.name}: {counted(book.n_functions, 'function')}{form}{f' ({by_irrep})' if by_irrep else ''}"
 
 
 def _expected(expected: Expected, page: Page) -> Iterator[str]:

@@ -11,7 +11,7 @@ from collections.abc import Iterable, Iterator, Mapping
 from typing import Any
 
 from checker import __version__
-from checker.findings import DeckReport, Json, Ledger, PlacedFinding, Repair, Verdict
+from checker.findings import BasisBook, DeckReport, Json, Ledger, PlacedFinding, Repair, SymmetryBook, Verdict
 from checker.report import Look
 from checker.report.plain import VERDICT_ORDER
 
@@ -19,6 +19,7 @@ REPORT_VERSION = 1
 SHARE_DECIMALS = 4  # weights and confidences
 EVIDENCE_DIGITS = 6
 _SURROGATE = "\\ud"
+LENGTH_DECIMALS = 6  # angstrom
 EDIT_DECIMALS = 8  # coordinates as they go into a deck
 
 
@@ -44,10 +45,28 @@ def deck_record(report: DeckReport) -> dict[str, Any]:
         "findings": [_finding(finding) for finding in report.findings],
         "not_judged": [{"rule": word.rule, "because": word.because} for word in report.not_judged],
         "ledger": None if report.ledger is None else _ledger(report.ledger),
-        "symmetry": None,
-        "basis": None,
+        "symmetry": None if report.symmetry is None else _symmetry(report.symmetry),
+        "basis": None if report.basis is None else _basis(report.basis),
         "expected": None if report.expected is None else _expected(report),
     }
+
+
+def _symmetry(book: SymmetryBook) -> dict[str, Any]:
+    higher = book.next_higher
+    return {
+        "point_group": book.point_group,
+        "abelian_subgroup": book.abelian_subgroup,
+        "deviation_angstrom": round(book.deviation_angstrom, LENGTH_DECIMALS),
+        "frame": book.frame_note,
+        "next_higher": None
+        if higher is None
+        else {"point_group": higher[0], "deviation_angstrom": round(higher[1], LENGTH_DECIMALS)},
+    }
+
+
+def _basis(book: BasisBook) -> dict[str, Any]:
+    by_irrep = None if book.by_irrep is None else dict(book.by_irrep)
+    return {"name": book.name, "functions": book.n_functions, "form": book.form, "by_irrep": by_irrep}
 
 
 def _deck_text(report: DeckReport) -> str:

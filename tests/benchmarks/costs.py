@@ -55,7 +55,7 @@ def ethane_like(n_atoms: int, seed: int) -> str:
     outward = np.array([[0.0, 0.63 * (-1) ** i, 0.0] for i in range(n_carbon)])
     hydrogens = np.concatenate([carbons + outward + [0, 0, 0.89], carbons + outward - [0, 0, 0.89]])
     ends = np.array([carbons[0] + [-0.89, -0.63, 0.0], carbons[-1] + [0.89, -0.63 * (-1) ** (n_carbon - 1), 0.0]])
-    xyz = np.concatenate([carbons, hydrogens, ends]) + rng.normal(scale=0.01, size=(n_atoms, 3))
+    xyz = np.concatenate([carbons, hydrogens, ends]) + rng.normal(scale=0.03, size=(n_atoms, 3))
     symbols = ["C"] * n_carbon + ["H"] * (2 * n_carbon + 2)
     rows = [f"{s} {x:.5f} {y:.5f} {z:.5f}" for s, (x, y, z) in zip(symbols, xyz.tolist(), strict=True)]
     return "\n".join([str(n_atoms), "charge=0 multiplicity=1", *rows, ""])
