@@ -29,7 +29,7 @@ class Body:
 
     Attributes
     ----------
-    kinds : (n,) int, equal for atoms that an operation may exchange.
+    kinds : (n,) int from 0 on, equal for atoms that an operation may exchange.
     positions : (n, 3) angstrom, relative to the centroid.
 
     """
@@ -74,7 +74,7 @@ class Body:
     @cached_property
     def environments(self) -> Floats:
         """(n, n) distances to the atoms of each kind in ascending order: equal for atoms that are equivalent."""
-        columns = [np.sort(self.distances[:, self.kinds == kind], axis=1) for kind in np.unique(self.kinds)]
+        columns = [np.sort(self.distances[:, self.kinds == kind], axis=1) for kind in range(self.kinds.max() + 1)]
         return np.concatenate(columns, axis=1)
 
     def images(self, matrices: Floats, atoms: Ints | None = None) -> Ints:

@@ -156,5 +156,5 @@ def _note(frame: Floats, farthest: float, tolerance: float) -> str:
     if moves.min() <= tolerance:
         names = ", ".join(("-" if row.sum() < 0 else "") + "xyz"[int(np.abs(row).argmax())] for row in exchange)
         return f"axes exchanged: x, y, z of the labels are {names} of the coordinates"
-    x, z = (f"({', '.join(f'{c:.3f}' for c in row + 0.0)})" for row in (frame[0], frame[2]))
+    x, z = (f"({', '.join(f'{c:.3f}' for c in np.round(row, 3) + 0.0)})" for row in (frame[0], frame[2]))
     return f"axes turned: z of the labels lies along {z} of the coordinates, x along {x}"

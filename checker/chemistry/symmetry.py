@@ -4,7 +4,7 @@ The group found is the largest one for which no atom would have to move farther 
 exactly symmetric (see `fitting` for how the nearest symmetric body is found). All atoms weigh alike, so the centre
 is the centroid.
 
-Provides `find_symmetry`, `Symmetry` and `deviation_from`.
+Provides `find_symmetry` and `Symmetry`.
 """
 
 from dataclasses import dataclass, field
@@ -18,7 +18,7 @@ from checker.chemistry.bodies import Body, Floats, Ints, body_of
 from checker.chemistry.descent import abelian_subgroups
 from checker.chemistry.fitting import Fit, settled
 from checker.chemistry.frames import Placement, diagonal_subgroup, permutations_among, place
-from checker.chemistry.irreps import point_group
+from checker.chemistry.irreps import MAX_AXIS, common_groups, point_group
 from checker.chemistry.lines import CONTINUOUS, Line, line_through, place_on_line
 from checker.chemistry.point_groups import standard_operations
 from checker.errors import NotDerivable
@@ -150,6 +150,55 @@ class Symmetry:
             return None
         return self._placed(symbol, self._fit.operations, axes)
 
+    def symmetrised_to(self, symbol: str, axes: str = "as-given") -> tuple[Floats, float] | None:
+        """Return coordinates (n, 3) with this group or one within it, and the largest move of an atom, angstrom.
+
+        None where the group is neither this one nor within it.
+        """
+        placed = self.subgroup(symbol, axes)
+        if placed is None:
+            return None
+        if symbol == self.group:
+            return self.symmetrised, self.deviation_angstrom
+        if self.axis is not None and symbol == "C∞v":
+            places = np.outer(self._body.positions @ self.axis, self.axis)
+        else:
+            _, places, _ = settled(self._body.positions, placed.operations, placed.permutations)
+        moves = np.linalg.norm(self._body.positions - places, axis=1)
+        return places + self.center, float(moves.max())
+
+    def within(self, tolerance: float) -> "Symmetry":
+        """Return the symmetry at another tolerance (angstrom), lowered to what the body's like atoms allow."""
+        most = 0.25 * self._body.gap * (1.0 - 1e-6)
+        coordinates = self._body.positions + self.center
+        return find_symmetry(
+            self._body.kinds, coordinates, min(tolerance, most), axes=self.axes, abelian_choice=self.abelian_choice
+        )
+
+    def nearest_with(self, symbol: str, reach: float) -> tuple[Floats, float] | None:
+        """Return coordinates (n, 3) with a group that the body may lack, and the largest move of an atom.
+
+        None where an atom would have to move farther than `reach`, angstrom.
+        """
+        for share in (0.2, 0.5, 1.0):
+            found = self.within(share * reach).symmetrised_to(symbol)
+            if found is not None and found[1] <= reach:
+                return found
+        return None
+
+    def shared_with(self, symbol: str) -> str:
+        """Return the largest common group that lies both in this one and in another."""
+        holder = {"C∞v": f"C{MAX_AXIS}v", "D∞h": f"D{MAX_AXIS}h", "Kh": "Ih"}.get(symbol, symbol)
+        operations = standard_operations(holder)
+        by_order = sorted(common_groups(), key=lambda name: (-_order(name), name != self.abelian_group))
+        return next(
+            name
+            for name in by_order
+            if len(operations) % _order(name) == 0
+            and len(placements(operations, name))
+            and self.subgroup(name) is not None
+        )
+
     def _placed(self, symbol: str, matrices: Floats, axes: str | None = None) -> Placement | None:
         assert isinstance(self._fit, Fit)
         lookup = permutations_among(self._fit.operations, self._fit.permutations)
@@ -210,13 +259,6 @@ def _fit(body: Body, tolerance: float) -> Fit | Line | None:
     return line_through(body, tolerance) or levels.largest_group(body, tolerance)
 
 
-def deviation_from(placement: Placement, coordinates: Floats) -> tuple[Floats, float]:
-    """Return coordinates (n, 3) made symmetric under a placed finite group, and the largest move, angstrom."""
-    center = coordinates.mean(axis=0)
-    _, places, deviation = settled(coordinates - center, placement.operations, placement.permutations)
-    return places + center, deviation
-
-
 def _refuse_coincidence(body: Body, tolerance: float) -> None:
     if body.gap <= 4.0 * tolerance:
         first, second = (atom + 1 for atom in sorted(body.closest_pair))
@@ -235,3 +277,9 @@ def _at_a_point(symbol: str, n_atoms: int) -> Placement | None:
     operations = standard_operations(finite)
     images = np.broadcast_to(np.arange(n_atoms), (len(operations), n_atoms))
     return Placement(symbol, np.eye(3), "axes as given", operations, images)
+
+
+def _order(symbol: str) -> int:
+    """Return the number of operations; none of the continuous groups is to be shared."""
+    group = point_group(symbol)
+    return 10_000_019 if group is None or group.order is None else group.order

@@ -187,6 +187,8 @@ def _is_permutation(images: Ints) -> Bools:
 
 def _distinct(body: Body, images: Ints, handedness: Ints) -> Found:
     """Keep each operation once, the best fitting first."""
+    if len(images) == 1:  # the identity, the usual case by far
+        return Found(images, handedness, np.zeros(1))
     keys = zip(handedness.tolist(), map(bytes, np.ascontiguousarray(images)), strict=True)
     first = list({key: i for i, key in enumerate(keys)}.values())
     images, handedness = images[first], handedness[first]
