@@ -184,7 +184,7 @@ class Facts:
             return BasisBook(name=self.job.basis.name, form=self.job.basis.form)
         by_irrep = None
         with contextlib.suppress(NotDerivable):
-            by_irrep = self.irreps.functions
+            by_irrep = self.irreps.functions_of_report
         return BasisBook(name=self.job.basis.name, n_functions=self.n_functions, form=form, by_irrep=by_irrep)
 
     @cached_property

@@ -119,6 +119,15 @@ class IrrepFacts:
         return {name: dimensions[name] * n for name, n in levels.items()}
 
     @cached_property
+    def functions_of_report(self) -> dict[str, int]:
+        """Basis functions by irrep of the deck's group where the geometry has it, else of its abelian group."""
+        try:
+            return self.functions
+        except NotDerivable:
+            abelian = self._facts.symmetry.abelian
+            return self._summed(lambda shells, form: self._levels(abelian.group, abelian, shells, form))
+
+    @cached_property
     def body_levels(self) -> dict[str, int]:
         """Levels of basis functions by irrep of the body's group."""
         placement = self._facts.symmetry.placement
@@ -162,7 +171,7 @@ class IrrepFacts:
 
     @cached_property
     def _limits(self) -> tuple[dict[str, int] | None, ...]:
-        """Levels of each irrep of the body's group: in a minimal picture, in the basis if it is known, any number."""
+        """Levels of each irrep of the body's group: in a minimal picture, in a known basis, any number."""
         with contextlib.suppress(NotDerivable):
             return self.minimal_body_levels, self.body_levels, None
         return self.minimal_body_levels, None
@@ -172,6 +181,16 @@ class IrrepFacts:
 
         Readings within the cores and valence shells of the atoms go before those that need more.
         """
+        if (alpha, beta) == self.electrons:
+            return self.stated_readings
+        return self._readings(alpha, beta)
+
+    @cached_property
+    def stated_readings(self) -> tuple["OpenLevel", ...] | None:
+        """What the stated occupation may mean, as `readings` tells it."""
+        return self._readings(*self.electrons)
+
+    def _readings(self, alpha: Counts, beta: Counts) -> tuple["OpenLevel", ...] | None:
         into = self.electrons_per_level
         if any(all(fills_whole_levels(into, counts, most) for counts in (alpha, beta)) for most in self._limits):
             return None

@@ -14,20 +14,14 @@ Source: R. S. Mulliken, J. Chem. Phys. 23, 1997 (1955); the limit by valence she
 
 from collections.abc import Iterator, Mapping
 
-import numpy as np
-
-from checker.chemistry.contacts import BOHR_ANGSTROM
 from checker.chemistry.irrep_names import read_orbital, read_state
 from checker.chemistry.relabelling import Relabelling
-from checker.elements import symbol_of
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Json, Repair
 from checker.registry import Rule
 
 MOST_ATOMS_TURNED = 200
 """A repair that rewrites more atoms than this is better made where the geometry comes from."""
-
-DIGITS = 6
 
 
 def judge(facts: Facts) -> Iterator[Finding]:
@@ -64,7 +58,7 @@ def _other_axes(facts: Facts, others: tuple[Relabelling, ...]) -> Finding:
 
 def _confidence(facts: Facts, n_choices: int) -> float:
     """Return more where partners of a level are at odds than where the valence shells alone speak."""
-    surest = 0.7 if facts.irreps.readings(*facts.irreps.electrons) is None else 0.95
+    surest = 0.7 if facts.irreps.stated_readings is None else 0.95
     return surest if n_choices == 1 else 0.8 * surest
 
 
@@ -76,7 +70,7 @@ def _frame_words(facts: Facts) -> str:
 def _repairs(facts: Facts, other: Relabelling, share: float) -> Iterator[Repair]:
     yield Repair(f"rename the irreps, {other.words}", tuple(_renamed(facts, other)), 0.6 * share)
     if facts.job.symmetry.axes == "as-given" and len(facts.numbers) <= MOST_ATOMS_TURNED:
-        yield Repair("keep the names and turn the geometry", tuple(_turned(facts, other)), 0.4 * share)
+        yield Repair("keep the names and turn the geometry", _turned(facts, other), 0.4 * share)
 
 
 def _renamed(facts: Facts, other: Relabelling) -> Iterator[Edit]:
@@ -105,19 +99,11 @@ def _new_name(facts: Facts, written: str, other: Relabelling) -> str:
     return written if irrep is None or other.names[irrep.name] == irrep.name else other.names[irrep.name]
 
 
-def _turned(facts: Facts, other: Relabelling) -> Iterator[Edit]:
+def _turned(facts: Facts, other: Relabelling) -> tuple[Edit, ...]:
     """Turn the molecule about its centre so that the axes which the labels speak of are x, y and z."""
     center = facts.symmetry.center
     turn = other.turn.T @ facts.irreps.placement.frame
-    unit = BOHR_ANGSTROM if facts.job.species.length_unit == "bohr" else 1.0
-    places = np.round(((facts.coordinates - center) @ turn.T + center) / unit, DIGITS) + 0.0
-    for index, place in enumerate(places.tolist()):
-        yield Edit(f"species.atoms[{index}]", [_symbol(facts, index), *place])
-
-
-def _symbol(facts: Facts, index: int) -> str:
-    mass_number = int(facts.job.species.atoms.mass_numbers[index])
-    return {2: "D", 3: "T"}.get(mass_number, symbol_of(int(facts.numbers[index])))
+    return facts.atoms_at((facts.coordinates - center) @ turn.T + center)
 
 
 RULE = Rule("axis-convention", Grade.DOUBT, judge)

@@ -26,8 +26,7 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
     if facts.job.occupations is None:
         return
     irreps = facts.irreps
-    alpha, beta = irreps.electrons
-    readings = irreps.readings(alpha, beta)
+    readings = irreps.stated_readings
     if readings is None or irreps.other_axes:
         return
     if facts.job.active_space is not None:
