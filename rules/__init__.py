@@ -24,6 +24,8 @@ from rules import (
     open_valence,
     partner_states,
     periodic_cell,
+    point_group_mismatch,
+    point_group_near_miss,
     rule_failed,
     spin_parity,
     state_symmetry,
@@ -52,6 +54,8 @@ ALL_RULES: tuple[Rule, ...] = (
     axis_convention.RULE,
     degenerate_partners.RULE,
     # symmetry
+    point_group_mismatch.RULE,
+    point_group_near_miss.RULE,
     state_symmetry.RULE,
     partner_states.RULE,
     # geometry

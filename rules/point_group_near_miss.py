@@ -54,7 +54,7 @@ def _lacking(facts: Facts, coordinates: NDArray[np.float64], deviation: float) -
     return Finding(
         at=KEY,
         message=f"the geometry has {stated} only within {deviation:.3f} angstrom; it has {symmetry.group} "
-        f"at {symmetry.tolerance:g}",
+        f"at {symmetry.tolerance:g} angstrom",
         why=f"Programs look for symmetry more closely than that: the job would stop, or run in {symmetry.group} "
         "with other labels.",
         confidence=0.9,

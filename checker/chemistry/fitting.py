@@ -48,6 +48,8 @@ def fitted(body: Body, group: Closed) -> Fit | None:
     """Fit the exact group to a body that is no line; None if the permutations belong to none that is listed."""
     if len(group) == 1:
         return Fit("C1", group, np.eye(3)[None], group.permutations, body.positions, 0.0)
+    if len(group) == 2:
+        return _fitted_pair(body, group)
     targets = body.positions[group.permutations]
     rough = best_matrices(body.positions, targets, group.handedness)
     symbol = symbol_of(group, np.trace(rough, axis1=1, axis2=2))
@@ -64,6 +66,27 @@ def fitted(body: Body, group: Closed) -> Fit | None:
     permutations = group.permutations[order]
     operations, symmetrised, deviation = settled(body.positions, operations, permutations)
     return Fit(symbol, group, operations, permutations, symmetrised, deviation)
+
+
+def _fitted_pair(body: Body, group: Closed) -> Fit:
+    """Fit C2, Cs or Ci: the axis is an eigenvector, so that no search for a place is needed.
+
+    A half turn about a, 2 aa' - 1, fits best where a'Ma is largest, M being the sum of the products of images and
+    atoms; a reflection, 1 - 2 aa', where it is smallest.
+    """
+    images = group.permutations[1]
+    products = body.positions[images].T @ body.positions
+    values, vectors = np.linalg.eigh(0.5 * (products + products.T))
+    if group.handedness[1] == 1:
+        symbol, operation = "C2", 2.0 * np.outer(vectors[:, 2], vectors[:, 2]) - np.eye(3)
+    elif values.sum() - 2.0 * values[0] >= -values.sum():
+        symbol, operation = "Cs", np.eye(3) - 2.0 * np.outer(vectors[:, 0], vectors[:, 0])
+    else:
+        symbol, operation = "Ci", -np.eye(3)
+    symmetrised = 0.5 * (body.positions + body.positions[images] @ operation)
+    gaps = body.positions - symmetrised
+    deviation = float(np.sqrt(np.einsum("ni,ni->n", gaps, gaps).max()))
+    return Fit(symbol, group, np.array([np.eye(3), operation]), group.permutations, symmetrised, deviation)
 
 
 def settled(positions: Floats, operations: Floats, permutations: Ints) -> tuple[Floats, Floats, float]:

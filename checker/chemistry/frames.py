@@ -146,6 +146,15 @@ def _exchanges() -> Floats:
     return np.array([matrix for matrix in signed if np.linalg.det(matrix) > 0])
 
 
+def straightened(positions: Floats, frame: Floats) -> Floats:
+    """Turn positions (n, 3) so that a frame that is nearly along the coordinate axes lies along them exactly."""
+    exchanges = _exchanges()
+    cosines = 0.5 * (np.einsum("ij,mij->m", frame, exchanges) - 1.0)
+    if cosines.max() < CLOSE_TO_AXIS:
+        return positions
+    return np.asarray(positions @ frame.T @ exchanges[cosines.argmax()])
+
+
 def _note(frame: Floats, farthest: float, tolerance: float) -> str:
     """Say how the coordinates' axes became those of the labels."""
     exchanges = _exchanges()

@@ -16,8 +16,8 @@ from checker.chemistry import levels
 from checker.chemistry.axes import placements
 from checker.chemistry.bodies import Body, Floats, Ints, body_of
 from checker.chemistry.descent import abelian_subgroups
-from checker.chemistry.fitting import Fit, settled
-from checker.chemistry.frames import Placement, diagonal_subgroup, permutations_among, place
+from checker.chemistry.fitting import Fit
+from checker.chemistry.frames import Placement, diagonal_subgroup, permutations_among, place, straightened
 from checker.chemistry.irreps import MAX_AXIS, common_groups, point_group
 from checker.chemistry.lines import CONTINUOUS, Line, line_through, place_on_line
 from checker.chemistry.point_groups import standard_operations
@@ -153,19 +153,20 @@ class Symmetry:
     def symmetrised_to(self, symbol: str, axes: str = "as-given") -> tuple[Floats, float] | None:
         """Return coordinates (n, 3) with this group or one within it, and the largest move of an atom, angstrom.
 
+        Elements that nearly lie along the coordinate axes are turned to lie along them exactly; that is no move.
         None where the group is neither this one nor within it.
         """
         placed = self.subgroup(symbol, axes)
         if placed is None:
             return None
         if symbol == self.group:
-            return self.symmetrised, self.deviation_angstrom
-        if self.axis is not None and symbol == "C∞v":
+            places = self.symmetrised - self.center
+        elif self.axis is not None and symbol == "C∞v":
             places = np.outer(self._body.positions @ self.axis, self.axis)
         else:
-            _, places, _ = settled(self._body.positions, placed.operations, placed.permutations)
+            places = (self._body.positions[placed.permutations] @ placed.operations).mean(axis=0)
         moves = np.linalg.norm(self._body.positions - places, axis=1)
-        return places + self.center, float(moves.max())
+        return straightened(places, placed.frame) + self.center, float(moves.max())
 
     def within(self, tolerance: float) -> "Symmetry":
         """Return the symmetry at another tolerance (angstrom), lowered to what the body's like atoms allow."""

@@ -148,19 +148,23 @@ def _reference_pair(body: Body, pool: Ints, resembles: Bools, reach: float) -> _
 
 def _candidates(body: Body, reference: _Reference) -> tuple[Floats, Ints]:
     """Return the matrices (c, 3, 3) that take the reference pair to its possible images, and their handedness."""
-    origin = _trihedra(body.positions[[reference.first]], body.positions[[reference.second]])
-    targets = _trihedra(body.positions[reference.images[:, 0]], body.positions[reference.images[:, 1]])
+    pairs = np.concatenate([[[reference.first, reference.second]], reference.images])
+    trihedra = _trihedra(body.positions[pairs[:, 0]], body.positions[pairs[:, 1]])
+    origin, targets = trihedra[0], trihedra[1:]
     mirrored = targets * np.array([1.0, 1.0, -1.0])
     handedness = np.repeat(np.array([1, -1], dtype=np.int64), len(targets))
-    return np.concatenate([targets, mirrored]) @ origin[0].T, handedness
+    return np.concatenate([targets, mirrored]) @ origin.T, handedness
 
 
 def _trihedra(first: Floats, second: Floats) -> Floats:
     """Return orthonormal right-handed axes (p, 3, 3), as columns, spanned by two vectors each."""
-    along = first / np.sqrt(np.einsum("pi,pi->p", first, first))[:, None]
+    axes = np.empty((len(first), 3, 3))
+    axes[:, :, 0] = along = first / np.sqrt(np.einsum("pi,pi->p", first, first))[:, None]
     across = second - np.einsum("pi,pi->p", second, along)[:, None] * along
     across /= np.maximum(np.sqrt(np.einsum("pi,pi->p", across, across)), 1e-12)[:, None]
-    return np.stack([along, across, cross_products(along, across)], axis=2)
+    axes[:, :, 1] = across
+    axes[:, :, 2] = cross_products(along, across)
+    return axes
 
 
 def _allowed_misfit(body: Body, reference: _Reference, reach: float) -> float:

@@ -209,7 +209,7 @@ def test_symmetrising_to_a_subgroup_only() -> None:
     assert found.symmetrised_to("C5") is None
     whole = found.symmetrised_to("D6h")
     assert whole is not None
-    assert whole[1] == found.deviation_angstrom
+    assert whole[1] == pytest.approx(found.deviation_angstrom)
 
 
 def test_symmetrising_to_a_line_without_a_centre() -> None:
