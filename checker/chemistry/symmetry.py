@@ -34,6 +34,9 @@ LARGEST_REACH = 0.3
 MOST_ATOMS = 3_000
 """Beyond this the distances of all atoms from each other would not be held in memory lightly."""
 
+FARTHEST = 1e5
+"""Angstrom from the origin; farther out the squares of coordinates lose the digits that count here."""
+
 
 @dataclass(frozen=True, eq=False)
 class Symmetry:
@@ -235,11 +238,13 @@ def find_symmetry(
     ------
     NotDerivable
         If there is no atom or more than `MOST_ATOMS`, if two atoms of one kind lie closer than four times the
-        tolerance, or if an axis has a higher order than is listed.
+        tolerance, if an axis has a higher order than is listed, or if an atom lies beyond `FARTHEST`.
 
     """
     if not 0 < len(kinds) <= MOST_ATOMS:
         raise NotDerivable(f"the symmetry of {len(kinds)} atoms is not worked out; from 1 to {MOST_ATOMS} it is")
+    if not np.abs(coordinates).max() < FARTHEST:
+        raise NotDerivable(f"an atom lies beyond {FARTHEST:g} angstrom, where distances are no longer exact")
     body, center = body_of(kinds, coordinates)
     fit = _fit(body, tolerance)
     if fit is None:

@@ -103,6 +103,12 @@ def test_too_few_and_too_many_atoms_are_refused(n_atoms: int) -> None:
         find_symmetry(np.full(n_atoms, 6), np.zeros((n_atoms, 3)))
 
 
+@pytest.mark.parametrize("far", [1e5, 1e200, np.inf, np.nan])
+def test_atoms_beyond_all_measure_are_refused(far: float) -> None:
+    with pytest.raises(NotDerivable, match="beyond 100000 angstrom"):
+        find_symmetry(np.array([1, 1]), np.array([[0.0, 0, 0], [0, 0, far]]))
+
+
 def test_a_search_beyond_all_measure_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:
     monkeypatch.setattr(symmetry_search, "MOST_IMAGES", 100)
     with pytest.raises(NotDerivable, match="would try 24 operations on 12 atoms"):
