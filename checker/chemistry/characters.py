@@ -97,7 +97,7 @@ def character_table(symbol: str) -> CharacterTable:
     what is no group.
 
     >>> table = character_table("C3v")
-    >>> table.class_names, table.characters.astype(int).tolist()
+    >>> table.class_names, table.characters.round().astype(int).tolist()
     (('E', '2C3', '3σv'), [[1, 1, 1], [1, 1, -1], [2, -1, 0]])
     """
     group = known_group(symbol)
