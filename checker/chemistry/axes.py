@@ -22,6 +22,9 @@ CLOSE_TO_AXIS = 0.999
 EXCHANGES_IN_TURN = np.eye(3)[[[0, 1, 2], [2, 0, 1], [1, 2, 0]]]
 """(3, 3, 3) rotations that leave the coordinate axes, or exchange them in turn."""
 
+MOST_TRIED = 64
+"""Of equivalent orientations; only those of I and Ih come in two sorts, of which these hold both."""
+
 
 @dataclass(frozen=True, eq=False)
 class _Marks:
@@ -102,7 +105,7 @@ def placements(matrices: Floats, symbol: str) -> Floats:
 
 def best_placement(matrices: Floats, handedness: Ints, orders: Ints, symbol: str) -> Floats | None:
     """Return the orientation (3, 3) of the group that lies best on approximate operations (g, 3, 3)."""
-    found = _candidates(matrices, handedness, orders, symbol, slack=0.25)
+    found = _candidates(matrices, handedness, orders, symbol, slack=0.25)[:MOST_TRIED]
     return None if not len(found) else np.asarray(found[_agreement(found, matrices, symbol).argmax()])
 
 
