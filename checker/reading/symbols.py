@@ -17,7 +17,7 @@ from checker.reading.words import nearest, quoted
 
 _LABEL = re.compile(r"([A-Za-z]{1,2})[^A-Za-z]")
 _ISOTOPE = re.compile(r"\d{1,3}-?([A-Za-z]{1,2})$")
-_STAND_IN = re.compile(r"(x+|q|bq|gh|du|dummy|ghost)([^a-z].*)?$", re.IGNORECASE)
+_STAND_IN = re.compile(r"(x+|dummy|ghost)([^a-z].*)?$", re.IGNORECASE)
 
 
 class Nuclide(NamedTuple):
