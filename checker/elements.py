@@ -56,6 +56,17 @@ def name_of(z: int) -> str:
     return str(periodictable.elements[z].name)
 
 
+def written_ion(z: int, charge: int) -> str:
+    """Return an atom or ion as written.
+
+    >>> written_ion(26, 2), written_ion(17, -1), written_ion(18, 0)
+    ('Fe2+', 'Cl-', 'Ar')
+    """
+    if charge == 0:
+        return symbol_of(z)
+    return f"{symbol_of(z)}{abs(charge) if abs(charge) > 1 else ''}{'+' if charge > 0 else '-'}"
+
+
 @cache
 def covalent_radius(z: int) -> float | None:
     """Return the covalent radius in angstrom (Cordero et al., Dalton Trans. 2008, 2832), or None above curium."""

@@ -14,9 +14,10 @@ from numpy.typing import NDArray
 
 from checker.chemistry import ledger as books
 from checker.deck import Aside
-from checker.elements import number_of, symbol_of
+from checker.elements import number_of, symbol_of, written_ion
 from checker.errors import NotDerivable
 from checker.findings import BasisBook, Edit, Expected, Ledger, SymmetryBook
+from checker.geometry import ANGSTROM_PER_BOHR
 from checker.model import Job
 
 if TYPE_CHECKING:
@@ -308,22 +309,21 @@ class Facts:
     def symmetry_book(self) -> SymmetryBook | None:
         """The symmetry for the report, None where it is not settled."""
         try:
-            symmetry = self.symmetry
+            symmetry, labels = self.symmetry, self.irreps.placement_of_report
         except NotDerivable:
             return None
         return SymmetryBook(
             point_group=symmetry.group,
             abelian_subgroup=symmetry.abelian_group,
             deviation_angstrom=symmetry.deviation_angstrom,
-            frame_note=symmetry.frame_note,
+            labels_of=labels.group,
+            frame_note=labels.frame_note,
             next_higher=symmetry.next_higher,
         )
 
     def atoms_at(self, coordinates: NDArray[np.float64]) -> tuple[Edit, ...]:
         """Return the edits that put all atoms of the deck, ghosts included, at other places (n, 3) angstrom."""
-        from checker.chemistry.contacts import BOHR_ANGSTROM
-
-        unit = BOHR_ANGSTROM if self.job.species.length_unit == "bohr" else 1.0
+        unit = ANGSTROM_PER_BOHR if self.job.species.length_unit == "bohr" else 1.0
         places = (np.round(coordinates / unit, PLACE_DIGITS) + 0.0).tolist()
         isotopes = {2: "D", 3: "T"}
         symbols = [
@@ -358,7 +358,6 @@ class Facts:
         Not derivable for molecules, for ions whose surroundings decide, where the level has no LS name, and where
         unpaired f electrons sit in the core potential.
         """
-        from checker.chemistry.configurations import written_ion
         from checker.chemistry.core_potentials import f_unpaired
 
         level, ion = self.ground_level, written_ion(self.ground_level.atomic_number, self.charge)

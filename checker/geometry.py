@@ -5,6 +5,9 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+ANGSTROM_PER_BOHR = 0.529177210544
+"""The Bohr radius, CODATA 2022: 0.529177210544(82) angstrom."""
+
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Geometry:

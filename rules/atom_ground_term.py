@@ -14,8 +14,8 @@ Source: NIST Atomic Spectra Database and the compilations named in checker/table
 
 from collections.abc import Iterator
 
-from checker.chemistry.configurations import written_ion
 from checker.chemistry.ledger import is_reachable
+from checker.elements import written_ion
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Repair
 from checker.registry import Rule

@@ -13,12 +13,15 @@ Source: R. S. Mulliken, J. Chem. Phys. 23, 1997 (1955); the limit by valence she
 """
 
 from collections.abc import Iterator, Mapping
+from typing import TYPE_CHECKING
 
 from checker.chemistry.irrep_names import read_orbital, read_state
-from checker.chemistry.relabelling import Relabelling
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Json, Repair
 from checker.registry import Rule
+
+if TYPE_CHECKING:
+    from checker.chemistry.relabelling import Relabelling
 
 MOST_ATOMS_TURNED = 200
 """A repair that rewrites more atoms than this is better made where the geometry comes from."""
@@ -33,7 +36,7 @@ def judge(facts: Facts) -> Iterator[Finding]:
         yield _other_axes(facts, others)
 
 
-def _other_axes(facts: Facts, others: tuple[Relabelling, ...]) -> Finding:
+def _other_axes(facts: Facts, others: "tuple[Relabelling, ...]") -> Finding:
     irreps = facts.irreps
     alpha, beta = irreps.electrons
     first = others[0]
@@ -67,13 +70,13 @@ def _frame_words(facts: Facts) -> str:
     return "coordinates' own axes" if note == "axes as given" else f"frame with {note}"
 
 
-def _repairs(facts: Facts, other: Relabelling, share: float) -> Iterator[Repair]:
+def _repairs(facts: Facts, other: "Relabelling", share: float) -> Iterator[Repair]:
     yield Repair(f"rename the irreps, {other.words}", tuple(_renamed(facts, other)), 0.6 * share)
     if facts.job.symmetry.axes == "as-given" and len(facts.numbers) <= MOST_ATOMS_TURNED:
         yield Repair("keep the names and turn the geometry", _turned(facts, other), 0.4 * share)
 
 
-def _renamed(facts: Facts, other: Relabelling) -> Iterator[Edit]:
+def _renamed(facts: Facts, other: "Relabelling") -> Iterator[Edit]:
     """Rename every table of the deck that is labelled by the same axes."""
     occupations, treatment, active = facts.job.occupations, facts.job.treatment, facts.job.active_space
     tables = {
@@ -93,13 +96,13 @@ def _renamed(facts: Facts, other: Relabelling) -> Iterator[Edit]:
             yield Edit("treatment.state_irrep", name)
 
 
-def _new_name(facts: Facts, written: str, other: Relabelling) -> str:
+def _new_name(facts: Facts, written: str, other: "Relabelling") -> str:
     """Return the new name, or the written one where it is unknown or stays."""
     irrep = read_orbital(facts.point_group, written).irrep or read_state(facts.point_group, written).irrep
     return written if irrep is None or other.names[irrep.name] == irrep.name else other.names[irrep.name]
 
 
-def _turned(facts: Facts, other: Relabelling) -> tuple[Edit, ...]:
+def _turned(facts: Facts, other: "Relabelling") -> tuple[Edit, ...]:
     """Turn the molecule about its centre so that the axes which the labels speak of are x, y and z."""
     center = facts.symmetry.center
     turn = other.turn.T @ facts.irreps.placement.frame

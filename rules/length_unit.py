@@ -14,9 +14,10 @@ found, no false alarm at scalings from 0.9 to 1.15).
 
 from collections.abc import Iterator
 
-from checker.chemistry.contacts import BOHR_ANGSTROM, LengthSlip
+from checker.chemistry.contacts import LengthSlip
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Repair
+from checker.geometry import ANGSTROM_PER_BOHR
 from checker.registry import Rule
 
 
@@ -45,11 +46,11 @@ def judge(facts: Facts) -> Iterator[Finding]:
 
 
 def _as_meant(slip: LengthSlip) -> float:
-    return slip.median_ratio * (BOHR_ANGSTROM if slip.too_long else 1 / BOHR_ANGSTROM)
+    return slip.median_ratio * (ANGSTROM_PER_BOHR if slip.too_long else 1 / ANGSTROM_PER_BOHR)
 
 
 def _way_out(facts: Facts, meant: str) -> str:
-    factor = BOHR_ANGSTROM if meant == "bohr" else 1 / BOHR_ANGSTROM
+    factor = ANGSTROM_PER_BOHR if meant == "bohr" else 1 / ANGSTROM_PER_BOHR
     if facts.job.species.length_unit == meant:
         return f"multiply the coordinates by {factor:.6f}, as the unit has been converted twice"
     bare = f" (an XYZ file without a deck is in angstrom: multiply by {factor:.6f})" if meant == "bohr" else ""

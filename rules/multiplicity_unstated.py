@@ -12,9 +12,9 @@ Source: common practice, no source; the ground levels as in checker/tables/READM
 
 from collections.abc import Iterator
 
-from checker.chemistry.configurations import written_ion
 from checker.chemistry.ledger import lowest_multiplicity
 from checker.chemistry.plausibility import state_weight
+from checker.elements import written_ion
 from checker.errors import NotDerivable
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Repair

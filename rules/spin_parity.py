@@ -13,16 +13,17 @@ tests/benchmarks/parity_ranking.py.
 """
 
 from collections.abc import Iterator
+from typing import TYPE_CHECKING
 
-from checker.chemistry.parity import Cause, Slip
 from checker.elements import symbol_of
 from checker.errors import NotDerivable
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Json, NotJudged, Repair
+from checker.geometry import ANGSTROM_PER_BOHR
 from checker.registry import Rule
 
-BOHR_ANGSTROM = 0.529177210903
-"""CODATA 2018."""
+if TYPE_CHECKING:
+    from checker.chemistry.parity import Cause
 
 
 def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
@@ -45,40 +46,40 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
     )
 
 
-def _repair(facts: Facts, cause: Cause) -> Repair:
+def _repair(facts: Facts, cause: "Cause") -> Repair:
     say, edits = _SAY[cause.kind](facts, cause)
     return Repair(f"{say}: {cause.reason}", edits, round(cause.weight, 3))
 
 
-def _multiplicity(_: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
+def _multiplicity(_: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     edit = Edit("species.multiplicity", cause.multiplicity)
     return f"set the multiplicity to {cause.multiplicity}", (edit,)
 
 
-def _charge(_: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
+def _charge(_: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     assert cause.charge is not None
     written = f"{cause.charge:+d}" if cause.charge else "0"
     return f"set the charge to {written}", (Edit("species.charge", cause.charge),)
 
 
-def _add_hydrogen(facts: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
+def _add_hydrogen(facts: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     assert cause.position is not None
-    unit = BOHR_ANGSTROM if facts.job.species.length_unit == "bohr" else 1.0
+    unit = ANGSTROM_PER_BOHR if facts.job.species.length_unit == "bohr" else 1.0
     row: list[Json] = ["H", *(round(value / unit, 4) for value in cause.position)]
     (atom,) = cause.atoms
     return f"add a hydrogen to {facts.label(atom)}", (Edit(f"species.atoms[{len(facts.numbers)}]", row),)
 
 
-def _drop_hydrogen(facts: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
+def _drop_hydrogen(facts: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     return f"delete the hydrogen {facts.label(cause.atoms[0])}", _deletions(facts, cause.atoms)
 
 
-def _drop_copies(facts: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
+def _drop_copies(facts: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     what = facts.label(cause.atoms[0]) if len(cause.atoms) == 1 else f"{len(cause.atoms)} atoms"
     return f"delete {what}, pasted twice", _deletions(facts, cause.atoms)
 
 
-def _core_potential(_: Facts, cause: Cause) -> tuple[str, tuple[Edit, ...]]:
+def _core_potential(_: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     assert cause.core_electrons is not None
     z, count = cause.core_electrons
     say = f"let the core potential of {symbol_of(z)} replace {count} electrons"
@@ -104,13 +105,13 @@ def _renumbered(numbers: tuple[int, ...], gone: list[int]) -> tuple[int, ...]:
     return tuple(number - sum(other < number for other in lost) for number in numbers if number not in lost)
 
 
-_SAY = {
-    Slip.MULTIPLICITY: _multiplicity,
-    Slip.CHARGE: _charge,
-    Slip.HYDROGEN_MISSING: _add_hydrogen,
-    Slip.HYDROGEN_SURPLUS: _drop_hydrogen,
-    Slip.ATOM_DOUBLED: _drop_copies,
-    Slip.CORE_POTENTIAL: _core_potential,
+_SAY = {  # by `checker.chemistry.parity.Slip`, which only a failed parity needs
+    "multiplicity": _multiplicity,
+    "charge": _charge,
+    "hydrogen-missing": _add_hydrogen,
+    "hydrogen-surplus": _drop_hydrogen,
+    "atom-doubled": _drop_copies,
+    "core-potential": _core_potential,
 }
 
 RULE = Rule("spin-parity", Grade.HALT, judge)

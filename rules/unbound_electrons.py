@@ -17,7 +17,7 @@ Source: A. I. Boldyrev, J. Simons, J. Chem. Phys. 98, 4745 (1993); X.-B. Wang, L
 from collections.abc import Iterator
 
 from checker.chemistry.attachment import Unbound, unbound_because, written_formula
-from checker.chemistry.configurations import anion_is_bound, ground_level, written_ion
+from checker.elements import written_ion
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Json, NotJudged, Repair
 from checker.registry import Rule
@@ -36,6 +36,8 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
 
 
 def _atom(facts: Facts, z: int) -> Iterator[Finding | NotJudged]:
+    from checker.chemistry.configurations import anion_is_bound  # a table that only free atoms need
+
     ion = written_ion(z, facts.charge)
     bound = anion_is_bound(z, facts.charge)
     if bound is None:
@@ -67,9 +69,15 @@ def _repairs(facts: Facts) -> tuple[Repair, ...]:
     surroundings = Repair("say that the species is in solution", (Edit("species.environment", "solution"),), 0.6)
     if facts.charge != -1:
         return (surroundings,)
-    multiplicity = 1 if facts.free_atom is None else ground_level(facts.free_atom, 0).multiplicity
+    multiplicity = 1 if facts.free_atom is None else _neutral_multiplicity(facts.free_atom)
     edits = (Edit("species.charge", 0), Edit("species.multiplicity", multiplicity))
     return Repair(f"take the neutral species, multiplicity {multiplicity}", edits, 0.6), surroundings
+
+
+def _neutral_multiplicity(z: int) -> int | None:
+    from checker.chemistry.configurations import ground_level
+
+    return ground_level(z, 0).multiplicity
 
 
 def _sign(charge: int) -> str:

@@ -25,7 +25,7 @@ from checker.chemistry.shells import (
     write_configuration,
 )
 from checker.chemistry.terms import hund_ground_level, max_unpaired, parse_level
-from checker.elements import symbol_of
+from checker.elements import written_ion
 from checker.errors import NotDerivable
 
 __all__ = [
@@ -34,7 +34,6 @@ __all__ = [
     "ground_level",
     "most_unpaired",
     "usual_charges",
-    "written_ion",
 ]
 
 #: Subshells in the order in which positive ions from 2+ on fill them: (n, l).
@@ -116,17 +115,6 @@ def usual_charges(z: int) -> tuple[int, ...]:
 def most_unpaired(occupation: Occupation) -> int:
     """Return how many electrons a configuration can leave unpaired at most."""
     return max_unpaired(without_n(occupation))
-
-
-def written_ion(z: int, charge: int) -> str:
-    """Return an atom or ion as written.
-
-    >>> written_ion(26, 2), written_ion(17, -1), written_ion(18, 0)
-    ('Fe2+', 'Cl-', 'Ar')
-    """
-    if charge == 0:
-        return symbol_of(z)
-    return f"{symbol_of(z)}{abs(charge) if abs(charge) > 1 else ''}{'+' if charge > 0 else '-'}"
 
 
 def _stored(row: tables.GroundLevelRow) -> GroundLevel:

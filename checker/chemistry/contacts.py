@@ -15,9 +15,6 @@ from numpy.typing import NDArray
 from checker.chemistry.neighbours import DENSE_LIMIT_ATOMS, Floats, Ints
 from checker.tables.structure import cordero_radii, is_covalent
 
-BOHR_ANGSTROM = 0.529177210544
-"""CODATA 2022."""
-
 SHORT_MEDIAN = 0.65
 """A median ratio below this is no molecule in angstrom: G2 in bohr gives 0.41 to 0.61, G2 shrunk by 0.9 0.70."""
 

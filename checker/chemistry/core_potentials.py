@@ -14,7 +14,6 @@ from dataclasses import dataclass
 from functools import cache
 
 from checker import tables
-from checker.chemistry.basis_sets import basis_set
 from checker.chemistry.shells import functions_in_subshell
 from checker.elements import symbol_of
 from checker.errors import NotDerivable
@@ -170,6 +169,8 @@ def _table_name(set_name: str) -> str:
     name = _plain(set_name)
     if name in _sets_by_plain_name():
         return name
+    from checker.chemistry.basis_sets import basis_set  # a catalogue that most decks do not need
+
     known = basis_set(set_name)
     return name if known is None else _plain(known.name)
 

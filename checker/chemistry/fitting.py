@@ -61,7 +61,7 @@ def fitted(body: Body, group: Closed) -> Fit | None:
     operations = frame.T @ standard_operations(symbol) @ frame
     closeness = operations.reshape(-1, 9) @ rough.reshape(-1, 9).T
     order = closeness.argmax(axis=1)
-    if len(np.unique(order)) < len(order):
+    if len(set(order.tolist())) < len(order):
         return None
     permutations = group.permutations[order]
     operations, symmetrised, deviation = settled(body.positions, operations, permutations)

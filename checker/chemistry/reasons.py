@@ -65,7 +65,7 @@ def why_doubled(numbers: Sequence[int]) -> str:
 
 
 def _ground_level(z: int, charge: int, multiplicity: int) -> str:
-    from checker.chemistry.configurations import written_ion
+    from checker.elements import written_ion
 
     return f"the ground level of {written_ion(z, charge)} has multiplicity {multiplicity}"
 

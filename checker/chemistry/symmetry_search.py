@@ -114,7 +114,8 @@ def _pool(body: Body, reach: float) -> tuple[Ints, Bools]:
     if len(pool) > POOL_ATOMS:
         off_line = _levers(body, pool[:1])[0]
         off_line = pool[off_line[pool] > 0.2 * off_line.max()]
-        pool = np.unique(np.concatenate([pool[: POOL_ATOMS // 2], off_line[: POOL_ATOMS // 2]]))
+        chosen = np.concatenate([pool[: POOL_ATOMS // 2], off_line[: POOL_ATOMS // 2]])
+        pool = np.flatnonzero(np.bincount(chosen))  # np.unique would import numpy.ma
     resembles = body.alike[pool] & (np.abs(body.radii[pool, None] - body.radii) <= slack)
     rows, columns = np.nonzero(resembles)
     every = 1 + len(rows) * len(body) // _COMPARED_ELEMENTS

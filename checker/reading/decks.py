@@ -9,7 +9,7 @@ import numpy as np
 
 from checker.deck import Aside, Deck, UnreadableDeck
 from checker.errors import Complaint, UnreadableInput
-from checker.geometry import Geometry
+from checker.geometry import ANGSTROM_PER_BOHR, Geometry
 from checker.model import Job
 from checker.reading.atom_numbers import faults_of_numbers
 from checker.reading.confinement import Home, name_of_geometry, open_geometry, sentence_on_path
@@ -21,7 +21,7 @@ from checker.reading.frames import frames_of, numbered
 from checker.reading.kinds import Kind
 from checker.reading.mapping import mapping_of
 from checker.reading.places import DeckAndFramePlaces, DeckPlaces
-from checker.reading.rows import ANGSTROM_PER_BOHR, ATOMS, geometry_of_rows
+from checker.reading.rows import ATOMS, geometry_of_rows
 from checker.reading.shape import build
 from checker.reading.xyz import BrokenFrame, Frame
 

@@ -7,14 +7,11 @@ from typing import Any
 
 import numpy as np
 
-from checker.geometry import Geometry
+from checker.geometry import ANGSTROM_PER_BOHR, Geometry
 from checker.reading.faults import Fault, cut_short
 from checker.reading.limits import MAX_COMPLAINTS_PER_LIST, MAX_COORDINATE_ANGSTROM
 from checker.reading.symbols import Nuclide, nuclide, nuclide_of_number, sentence_on_number, sentence_on_symbol
 from checker.reading.words import described, plural
-
-# bohr radius: CODATA 2022, 0.529177210544(82) angstrom
-ANGSTROM_PER_BOHR = 0.529177210544
 
 ATOMS = ("species", "atoms")
 _ROW = 'a row is ["O", x, y, z]'

@@ -7,7 +7,8 @@ import numpy as np
 import pytest
 from ase.collections import g2
 
-from checker.chemistry.contacts import BOHR_ANGSTROM, Nearest, nearest_by_bond_length
+from checker.chemistry.contacts import Nearest, nearest_by_bond_length
+from checker.geometry import ANGSTROM_PER_BOHR
 
 
 def nearest(name: str) -> Nearest:
@@ -30,8 +31,8 @@ def test_range_of_the_medians() -> None:
     assert (min(MEDIANS, key=MEDIANS.__getitem__), max(MEDIANS, key=MEDIANS.__getitem__)) == ("CCH", "F2O")
     low, high = min(MEDIANS.values()), max(MEDIANS.values())
     assert (low, high) == pytest.approx((0.776, 1.157), abs=1e-3)
-    assert (low / BOHR_ANGSTROM, high / BOHR_ANGSTROM) == pytest.approx((1.467, 2.186), abs=1e-3)
-    assert (low * BOHR_ANGSTROM, high * BOHR_ANGSTROM) == pytest.approx((0.411, 0.612), abs=1e-3)
+    assert (low / ANGSTROM_PER_BOHR, high / ANGSTROM_PER_BOHR) == pytest.approx((1.467, 2.186), abs=1e-3)
+    assert (low * ANGSTROM_PER_BOHR, high * ANGSTROM_PER_BOHR) == pytest.approx((0.411, 0.612), abs=1e-3)
 
 
 def test_farthest_nearest_neighbour() -> None:

@@ -9,9 +9,9 @@ from pathlib import Path
 import pytest
 
 from checker import tables
-from checker.chemistry.configurations import anion_is_bound, ground_level, usual_charges, written_ion
+from checker.chemistry.configurations import anion_is_bound, ground_level, usual_charges
 from checker.chemistry.shells import parse_configuration
-from checker.elements import number_of, symbol_of
+from checker.elements import number_of, symbol_of, written_ion
 from checker.errors import NotDerivable
 
 ALL = range(1, 119)

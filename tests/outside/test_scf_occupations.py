@@ -16,6 +16,7 @@ from builders import job, run_rule
 from checker.chemistry.relabelling import relabellings
 from checker.facts import Facts
 from checker.findings import Grade
+from checker.geometry import ANGSTROM_PER_BOHR
 from checker.model import Job
 from rules import axis_convention, degenerate_partners, occupation_capacity
 
@@ -27,7 +28,6 @@ DEGENERATE = {
     "B": "2Pu", "Al": "2Pu", "C": "3Pg", "Si": "3Pg", "O": "3Pg", "S": "3Pg", "F": "2Pu", "Cl": "2Pu",
     "CH": "2Π", "OH": "2Π", "SH": "2Π", "NO": "2Π", "ClO": "2Π",
 }  # fmt: skip
-BOHR_ANGSTROM = 0.529177210544
 FLOOR_OF_CAUGHT = 0.8
 """Share of the wrong choices of axes that the rule catches; some molecules in C2v leave both planes possible."""
 
@@ -43,7 +43,7 @@ def atoms_in_frame(name: str) -> tuple[tuple[str, float, float, float], ...]:
     spin = round(sum(atoms.get_initial_magnetic_moments()))
     mol = gto.M(atom=rows, basis="sto-3g", symmetry=ROWS[name]["group"], spin=spin, verbose=0)
     placed = mol.format_atom(mol._atom, mol._symm_orig, mol._symm_axes, "Bohr")
-    return tuple((symbol, *(BOHR_ANGSTROM * float(x) for x in place)) for symbol, place in placed)
+    return tuple((symbol, *(ANGSTROM_PER_BOHR * float(x) for x in place)) for symbol, place in placed)
 
 
 def deck(name: str, alpha: dict[str, int], beta: dict[str, int]) -> Job:

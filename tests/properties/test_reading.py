@@ -11,14 +11,15 @@ from hypothesis import strategies as st
 
 from builders import geometry
 from checker.deck import Deck, UnreadableDeck
+from checker.geometry import ANGSTROM_PER_BOHR
 from checker.reading import FillIn, read_text
 from checker.reading.comment import PLAIN_LAYOUT
 from checker.reading.kinds import Kind
 from checker.reading.known_keys import tables
 from checker.reading.lines import LineStream
 from checker.reading.places import DeckPlaces
-from checker.reading.rows import ANGSTROM_PER_BOHR, _sentence_on_row
 from checker.reading.rows import _read_at_once as _read_rows_at_once
+from checker.reading.rows import _sentence_on_row
 from checker.reading.shape import build
 from checker.reading.xyz_rows import _read_at_once, _read_one_by_one
 

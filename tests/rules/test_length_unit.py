@@ -6,8 +6,8 @@ from ase.cluster import Octahedron
 from ase.collections import g2
 
 from builders import job, run_rule
-from checker.chemistry.contacts import BOHR_ANGSTROM
 from checker.findings import Edit, Finding
+from checker.geometry import ANGSTROM_PER_BOHR
 from rules.length_unit import RULE
 
 POLYATOMIC = sorted(name for name in g2.names if len(g2[name]) > 2)
@@ -27,9 +27,9 @@ def test_finds_every_polyatomic_of_g2_in_the_wrong_unit() -> None:
     """Curtiss et al., J. Chem. Phys. 106, 1063 (1997), geometries as ASE ships them."""
     assert len(POLYATOMIC) == 120
     for name in POLYATOMIC:
-        (long,) = scaled(g2[name], 1 / BOHR_ANGSTROM)
+        (long,) = scaled(g2[name], 1 / ANGSTROM_PER_BOHR)
         assert long.repairs[0].edits == (Edit("species.length_unit", "bohr"),), name
-        (short,) = scaled(g2[name], BOHR_ANGSTROM, length_unit="bohr")
+        (short,) = scaled(g2[name], ANGSTROM_PER_BOHR, length_unit="bohr")
         assert short.repairs[0].edits == (Edit("species.length_unit", "angstrom"),), name
 
 
@@ -56,13 +56,13 @@ def test_is_silent_on_a_metal_cluster() -> None:
 
 
 def test_more_atoms_make_it_surer() -> None:
-    (three,), (fourteen,) = (scaled(g2[name], 1 / BOHR_ANGSTROM) for name in ("H2O", "isobutane"))
+    (three,), (fourteen,) = (scaled(g2[name], 1 / ANGSTROM_PER_BOHR) for name in ("H2O", "isobutane"))
     assert three.confidence < 0.7
     assert fourteen.confidence > 0.9
 
 
 def test_says_both_ratios_and_the_way_out() -> None:
-    (finding,) = scaled(g2["CH4"], 1 / BOHR_ANGSTROM)
+    (finding,) = scaled(g2["CH4"], 1 / ANGSTROM_PER_BOHR)
     assert finding.at == "species.length_unit"
     assert finding.message == (
         "the nearest neighbours stand at 1.92 times a bond's length; as bohr they would stand at 1.02; "
@@ -71,11 +71,11 @@ def test_says_both_ratios_and_the_way_out() -> None:
 
 
 def test_the_unit_of_a_geometry_file_is_stated_in_the_deck() -> None:
-    (finding,) = scaled(g2["CH4"], 1 / BOHR_ANGSTROM, geometry="methane.xyz")
+    (finding,) = scaled(g2["CH4"], 1 / ANGSTROM_PER_BOHR, geometry="methane.xyz")
     assert finding.repairs[0].edits == (Edit("species.length_unit", "bohr"),)
 
 
 def test_a_unit_converted_twice_is_said_so() -> None:
-    (finding,) = scaled(g2["CH4"], 1 / BOHR_ANGSTROM, length_unit="bohr")
+    (finding,) = scaled(g2["CH4"], 1 / ANGSTROM_PER_BOHR, length_unit="bohr")
     assert "converted twice" in finding.message
     assert finding.repairs == ()

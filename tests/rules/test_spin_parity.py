@@ -7,7 +7,8 @@ from shapes import Structure, rows, without
 
 from builders import job, run_rule, speak
 from checker.findings import Edit, Finding, NotJudged
-from rules.spin_parity import BOHR_ANGSTROM, RULE
+from checker.geometry import ANGSTROM_PER_BOHR
+from rules.spin_parity import RULE
 
 
 @pytest.mark.parametrize(
@@ -53,7 +54,7 @@ def test_a_multiplicity_is_set() -> None:
     assert finding.repairs[0].edits == (Edit("species.multiplicity", 1),)
 
 
-@pytest.mark.parametrize(("unit", "length"), [("angstrom", 1.0), ("bohr", BOHR_ANGSTROM)])
+@pytest.mark.parametrize(("unit", "length"), [("angstrom", 1.0), ("bohr", ANGSTROM_PER_BOHR)])
 def test_a_hydrogen_is_added_in_the_unit_of_the_deck(unit: str, length: float) -> None:
     """The geometry is held in angstrom; the row that goes into the deck is in the deck's own unit."""
     stated = job(CUT_METHANE, multiplicity=1, species={"length_unit": unit})

@@ -10,10 +10,9 @@ from checker.chemistry.configurations import (
     ground_level,
     most_unpaired,
     usual_charges,
-    written_ion,
 )
 from checker.chemistry.shells import electrons_in
-from checker.elements import number_of
+from checker.elements import number_of, written_ion
 from checker.errors import NotDerivable
 
 

@@ -44,7 +44,7 @@ def test_the_likeliest_cause(made: Structure, charge: int, multiplicity: int, fi
 
 
 def test_f_electrons_inside_the_core_were_counted() -> None:
-    """Gadolinium(III) with 53 electrons replaced holds 4f7 in its core: the octet was counted, a singlet is left."""
+    """Gadolinium(III) with 53 electrons replaced: 4f7 is in the core, a singlet is left to count, no octet."""
     gadolinium = np.array([64]), np.zeros((1, 3))
     causes = rank_causes(*gadolinium, 3, 8, replaced={64: 53}, unpaired_in_core=7)
     assert brief(causes[0]) == (Slip.MULTIPLICITY, 1)
