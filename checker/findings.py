@@ -159,7 +159,7 @@ class BasisBook:
     """The basis of a job as the deck names it; None is what cannot be worked out.
 
     `form` is None where the functions of different angular momenta have different ones; `by_irrep` counts
-    functions.
+    functions, in the group that `SymmetryBook.labels_of` names.
     """
 
     name: str
@@ -175,13 +175,15 @@ class SymmetryBook:
     Attributes
     ----------
     deviation_angstrom : the largest distance an atom would have to move for the group.
-    frame_note : how the coordinates' axes were turned into those that irrep labels refer to, in words.
+    labels_of : the group whose labels the report uses: the deck's where the geometry has it, else the abelian one.
+    frame_note : how the coordinates' axes were turned into those that these labels refer to, in words.
     next_higher : the next group above and its own deviation; None where none is near or it was not asked for.
     """
 
     point_group: str
     abelian_subgroup: str
     deviation_angstrom: float
+    labels_of: str
     frame_note: str
     next_higher: tuple[str, float] | None = None
 

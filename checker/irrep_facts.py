@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 from numpy.typing import NDArray
 
+from checker.chemistry.characters import known_group
 from checker.chemistry.descent import Correlation, correlation
 from checker.chemistry.filling import electron_correlation, fills_whole_levels, is_pure, open_levels
 from checker.chemistry.functions import Form, levels_on_axis, levels_per_irrep
@@ -114,18 +115,25 @@ class IrrepFacts:
     @cached_property
     def functions(self) -> dict[str, int]:
         """Basis functions by irrep of the deck's group, a degenerate one with all its partners."""
-        dimensions = {irrep.name: irrep.dimension for irrep in self._facts.point_group.irreps}
-        levels = self._summed(lambda shells, form: self._levels(self.group, self.placement, shells, form))
+        return self._functions_in(self.placement)
+
+    def _functions_in(self, placement: "Placement") -> dict[str, int]:
+        dimensions = {irrep.name: irrep.dimension for irrep in known_group(placement.group).irreps}
+        levels = self._summed(lambda shells, form: self._levels(placement.group, placement, shells, form))
         return {name: dimensions[name] * n for name, n in levels.items()}
 
     @cached_property
-    def functions_of_report(self) -> dict[str, int]:
-        """Basis functions by irrep of the deck's group where the geometry has it, else of its abelian group."""
+    def placement_of_report(self) -> "Placement":
+        """The deck's group where the geometry has it, else the abelian one: the labels of the report are its own."""
         try:
-            return self.functions
+            return self.placement
         except NotDerivable:
-            abelian = self._facts.symmetry.abelian
-            return self._summed(lambda shells, form: self._levels(abelian.group, abelian, shells, form))
+            return self._facts.symmetry.abelian
+
+    @cached_property
+    def functions_of_report(self) -> dict[str, int]:
+        """Basis functions by irrep of the group of `placement_of_report`, degenerate ones with all partners."""
+        return self._functions_in(self.placement_of_report)
 
     @cached_property
     def body_levels(self) -> dict[str, int]:

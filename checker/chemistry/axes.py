@@ -154,10 +154,10 @@ def _nearest_frame(standard: Floats, direction: Floats) -> Floats:
     """
     close = np.flatnonzero(standard @ EXCHANGES_IN_TURN @ direction > CLOSE_TO_AXIS)
     exchange = EXCHANGES_IN_TURN[close[0] if len(close) else 0]
-    return np.asarray(_shortest_turn(exchange @ direction, standard) @ exchange)
+    return np.asarray(shortest_turn(exchange @ direction, standard) @ exchange)
 
 
-def _shortest_turn(start: Floats, end: Floats) -> Floats:
+def shortest_turn(start: Floats, end: Floats) -> Floats:
     """Return the rotation (3, 3) by the least angle that takes one unit vector to another."""
     cosine = float(start @ end)
     if 1.0 + cosine < EXACT:

@@ -64,6 +64,21 @@ def abelian_subgroups(symbol: str) -> tuple[Subgroup, ...]:
     return tuple(Subgroup(row.subgroup, _turn(row.turn, n or 2)) for row in rows)
 
 
+@cache
+def operations_of(symbol: str, subgroup: str) -> NDArray[np.int64]:
+    """Return which of `standard_operations` of a finite group are those (k,) of one of its abelian groups.
+
+    Raises ValueError where the table has no such subgroup.
+    """
+    turns = [choice.turn for choice in abelian_subgroups(symbol) if choice.symbol == subgroup]
+    if not turns:
+        raise ValueError(f"{subgroup} is not the abelian group of {symbol}")
+    placed = turns[0].T @ standard_operations(subgroup) @ turns[0]
+    indices = indices_of(placed, standard_operations(symbol))
+    indices.setflags(write=False)
+    return indices
+
+
 def _turn(words: str, n: int) -> Matrices:
     """Return the turn that the table describes; Td counts as having the S4 axes of D2d."""
     if words == "half step":

@@ -14,7 +14,7 @@ from itertools import permutations, product
 
 import numpy as np
 
-from checker.chemistry.axes import CLOSE_TO_AXIS, EXACT, EXCHANGES_IN_TURN
+from checker.chemistry.axes import CLOSE_TO_AXIS, EXACT, EXCHANGES_IN_TURN, shortest_turn
 from checker.chemistry.bodies import Floats, Ints
 from checker.chemistry.point_groups import family_of, indices_of, standard_operations
 
@@ -22,6 +22,9 @@ ON_ELEMENT = 1e-3
 """Angstrom: an atom of a symmetrised body closer than this to an axis or a plane lies on it."""
 
 AXES_AS_GIVEN = "axes as given"
+NEARLY_RADIAN = 0.045
+"""A turn by less than this, the angle of `CLOSE_TO_AXIS`, is told by its angle alone."""
+
 LABELS_WITHOUT_AXES = "the labels do not depend on the axes"
 
 
@@ -76,33 +79,13 @@ def place(
     frame = _nearest_to_given(found)
     operations = frame.T @ standard_operations(symbol) @ frame
     farthest = float(np.linalg.norm(positions, axis=1).max())
-    note = LABELS_WITHOUT_AXES if symbol in ("C1", "Cs", "Ci") else _note(frame, farthest, tolerance)
+    note = note_of(symbol, frame, farthest, tolerance)
     return Placement(symbol, frame, note, operations, permutations_of(operations))
 
 
 def permutations_among(matrices: Floats, images: Ints) -> PermutationsOf:
     """Return what looks permutations up: matrices (g, 3, 3) of a body and their permutations (g, n)."""
     return lambda operations: images[indices_of(operations, matrices)]
-
-
-@cache
-def diagonal_subgroup(symbol: str) -> tuple[str, tuple[int, ...]]:
-    """Return the symbol of the subgroup that is diagonal in the standard frame, and which operations are its own.
-
-    For every finite group this is the largest subgroup that is within D2h.
-    """
-    operations = standard_operations(symbol)
-    off = np.abs(operations * (1.0 - np.eye(3))).max(axis=(1, 2))
-    indices = np.flatnonzero(off < EXACT)
-    traces = np.rint(np.trace(operations[indices], axis1=1, axis2=2)).astype(int).tolist()
-    return _WITHIN_D2H[traces.count(-1), traces.count(1), traces.count(-3)], tuple(indices.tolist())
-
-
-#: Groups within D2h by their numbers of twofold axes, planes and centres.
-_WITHIN_D2H = {
-    (0, 0, 0): "C1", (0, 1, 0): "Cs", (0, 0, 1): "Ci", (1, 0, 0): "C2",
-    (1, 2, 0): "C2v", (1, 1, 1): "C2h", (3, 0, 0): "D2", (3, 3, 1): "D2h",
-}  # fmt: skip
 
 
 def _recommended(symbol: str, found: Floats, positions: Floats) -> Floats:
@@ -147,23 +130,60 @@ def _exchanges() -> Floats:
 
 
 def straightened(positions: Floats, frame: Floats) -> Floats:
-    """Turn positions (n, 3) so that a frame that is nearly along the coordinate axes lies along them exactly."""
+    """Turn positions (n, 3) so that a frame, or its z, that is nearly along coordinate axes lies along them."""
     exchanges = _exchanges()
     cosines = 0.5 * (np.einsum("ij,mij->m", frame, exchanges) - 1.0)
-    if cosines.max() < CLOSE_TO_AXIS:
-        return positions
-    return np.asarray(positions @ frame.T @ exchanges[cosines.argmax()])
+    if cosines.max() > CLOSE_TO_AXIS:
+        return np.asarray(positions @ frame.T @ exchanges[cosines.argmax()])
+    along = exchanges[(exchanges[:, 2] @ frame[2]).argmax(), 2]
+    if along @ frame[2] > CLOSE_TO_AXIS:
+        return np.asarray(positions @ shortest_turn(frame[2], along).T)
+    return positions
 
 
-def _note(frame: Floats, farthest: float, tolerance: float) -> str:
-    """Say how the coordinates' axes became those of the labels."""
+def note_of(symbol: str, frame: Floats, farthest: float, tolerance: float) -> str:
+    """Say how the coordinates' axes became those of the labels, as far as labels or elements hang on them.
+
+    Parameters
+    ----------
+    symbol : the group, finite or continuous.
+    frame : (3, 3) rotation into the standard axes.
+    farthest : of the atoms from the centre, angstrom.
+    tolerance : angstrom; a turn that moves no atom by more than this is not worth a word.
+
+    """
+    named = _axes_that_count(symbol)
+    if not named:
+        return LABELS_WITHOUT_AXES
+    rows = ["xyz".index(name) for name in named]
     exchanges = _exchanges()
-    moves = farthest * np.linalg.norm(frame - exchanges, axis=(1, 2)) / 2**0.5
-    exchange = exchanges[moves.argmin()]
-    if moves.min() <= tolerance and np.allclose(exchange, np.eye(3)):
-        return AXES_AS_GIVEN
-    if moves.min() <= tolerance:
-        names = ", ".join(("-" if row.sum() < 0 else "") + "xyz"[int(np.abs(row).argmax())] for row in exchange)
-        return f"axes exchanged: x, y, z of the labels are {names} of the coordinates"
+    gaps = np.linalg.norm((frame - exchanges)[:, rows], axis=(1, 2)) / (1.0 if len(rows) == 1 else 2**0.5)
+    exchange, turn = exchanges[gaps.argmin()][rows], float(gaps.min())
+    if turn * farthest > tolerance and turn > NEARLY_RADIAN:
+        return "axes turned: " + _directions(frame)
+    off = f", off by {np.degrees(turn):.1f} degrees" if turn * farthest > tolerance else ""
+    letters = [_signed_letter(row, len(rows) > 1) for row in exchange]
+    if letters == list(named):
+        return f"axes nearly as given{off}" if off else AXES_AS_GIVEN
+    verb = "are" if len(rows) > 1 else "is"
+    return f"axes exchanged: {', '.join(named)} of the labels {verb} {', '.join(letters)} of the coordinates{off}"
+
+
+def _axes_that_count(symbol: str) -> str:
+    """Return the axes that names or elements hang on: in most groups only that of the main axis."""
+    family, n = family_of(symbol)
+    if symbol in ("C∞v", "D∞h"):
+        return "z"
+    if n < 2:
+        return ""
+    return "xyz" if family in ("Cnv", "Dn", "Dnh") and n % 2 == 0 else "z"
+
+
+def _signed_letter(row: Floats, with_sign: bool) -> str:
+    return ("-" if with_sign and row.sum() < 0 else "") + "xyz"[int(np.abs(row).argmax())]
+
+
+def _directions(frame: Floats) -> str:
+    """Return where z and x of the labels lie; x fixes what z leaves open."""
     x, z = (f"({', '.join(f'{c:.3f}' for c in np.round(row, 3) + 0.0)})" for row in (frame[0], frame[2]))
-    return f"axes turned: z of the labels lies along {z} of the coordinates, x along {x}"
+    return f"z of the labels lies along {z} of the coordinates, x along {x}"

@@ -8,7 +8,7 @@ import numpy as np
 
 from checker.chemistry.axes import EXACT, placements
 from checker.chemistry.bodies import Body, Floats, Ints
-from checker.chemistry.frames import Placement, place
+from checker.chemistry.frames import Placement, note_of, place
 from checker.chemistry.irreps import MAX_AXIS, point_group
 from checker.chemistry.point_groups import family_of, standard_operations
 
@@ -73,7 +73,10 @@ def place_on_line(symbol: str, line: Line, axes: str, tolerance: float) -> Place
     if symbol not in ("C∞v", line.symbol):
         return None
     placed = _place_finite(CONTINUOUS[symbol], line, axes, tolerance, along=True)
-    return None if placed is None else replace(placed, group=symbol)
+    if placed is None:
+        return None
+    farthest = float(np.linalg.norm(line.symmetrised, axis=1).max())
+    return replace(placed, group=symbol, frame_note=note_of(symbol, placed.frame, farthest, tolerance))
 
 
 def _place_finite(symbol: str, line: Line, axes: str, tolerance: float, along: bool = False) -> Placement | None:

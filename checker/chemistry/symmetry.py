@@ -15,9 +15,9 @@ import numpy as np
 from checker.chemistry import levels
 from checker.chemistry.axes import placements
 from checker.chemistry.bodies import Body, Floats, Ints, body_of
-from checker.chemistry.descent import abelian_subgroups
+from checker.chemistry.descent import abelian_subgroups, operations_of
 from checker.chemistry.fitting import Fit
-from checker.chemistry.frames import Placement, diagonal_subgroup, permutations_among, place, straightened
+from checker.chemistry.frames import Placement, note_of, permutations_among, place, straightened
 from checker.chemistry.irreps import MAX_AXIS, common_groups, point_group
 from checker.chemistry.lines import CONTINUOUS, Line, line_through, place_on_line
 from checker.chemistry.point_groups import standard_operations
@@ -78,22 +78,16 @@ class Symmetry:
 
     @cached_property
     def abelian(self) -> Placement:
-        """The largest subgroup that is within D2h, in the frame of its own labels.
-
-        Where there are several it is the one that the group's own frame makes diagonal, but for the choice.
-        """
+        """The largest subgroup that is within D2h, in the frame of its own labels; see `abelian_subgroups`."""
+        choices = [choice.symbol for choice in abelian_subgroups(self.group)]
+        symbol = self.abelian_choice if self.abelian_choice in choices else choices[0]
         placed: Placement | None
-        if not isinstance(self._fit, Fit):
-            placed = self.subgroup(CONTINUOUS[self.group], self.axes)
+        if symbol == self.group:
+            placed = self.placement
+        elif isinstance(self._fit, Fit):
+            placed = self._placed(symbol, self.operations[operations_of(self.group, symbol)])
         else:
-            symbol, indices = diagonal_subgroup(self.group)
-            choices = [choice.symbol for choice in abelian_subgroups(self.group)]
-            if self.abelian_choice != symbol and self.abelian_choice in choices:
-                placed = self._placed(self.abelian_choice, self.operations)
-            elif symbol == self.group:
-                placed = self.placement
-            else:
-                placed = self._placed(symbol, self.operations[list(indices)])
+            placed = self.subgroup(symbol, self.axes)
         assert placed is not None, self.group
         return placed
 
@@ -282,7 +276,8 @@ def _at_a_point(symbol: str, n_atoms: int) -> Placement | None:
     finite = (CONTINUOUS).get(symbol, symbol)
     operations = standard_operations(finite)
     images = np.broadcast_to(np.arange(n_atoms), (len(operations), n_atoms))
-    return Placement(symbol, np.eye(3), "axes as given", operations, images)
+    frame = np.eye(3)
+    return Placement(symbol, frame, note_of(symbol, frame, 0.0, 0.0), operations, images)
 
 
 def _order(symbol: str) -> int:

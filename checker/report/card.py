@@ -20,6 +20,8 @@ from checker.report.plain import counted, evidence, grade_counts, plain, signed
 MOST_FINDINGS = 40
 LONGEST_EVIDENCE = 400
 INDENT = "    "
+EXACT_ANGSTROM = 0.0001
+"""Smaller deviations from a point group are not told apart; coordinates have no more digits that count."""
 
 
 def card(report: DeckReport, page: Page) -> Iterator[str]:
@@ -32,8 +34,10 @@ def card(report: DeckReport, page: Page) -> Iterator[str]:
         yield from _books(report.ledger, page, short=report.verdict is Verdict.CLEAR)
     if report.symmetry is not None:
         yield from page.entry("symmetry", _symmetry(report.symmetry))
+        if report.symmetry.point_group != "C1":
+            yield from page.entry("", f"labels of {report.symmetry.labels_of}: {report.symmetry.frame_note}")
     if report.basis is not None:
-        yield from page.entry("basis", plain(_basis(report.basis)))
+        yield from page.entry("basis", plain(_basis(report.basis, report.symmetry)))
     if report.expected is not None:
         yield from _expected(report.expected, page)
     yield from _not_judged(report, page)
@@ -198,24 +202,25 @@ def _formula(books: tuple[ElementBook, ...]) -> str:
 
 
 def _symmetry(book: SymmetryBook) -> str:
-    """Return the group and how exact it is, the group above, and how labels are bound to axes."""
-    parts = [f"{book.point_group} within {book.deviation_angstrom:.4f} angstrom"]
+    """Return the group and how exact it is, the abelian group, and the group above."""
+    parts = [f"{book.point_group} within {max(book.deviation_angstrom, EXACT_ANGSTROM):.4f} angstrom"]
     if book.abelian_subgroup != book.point_group:
         parts.append(f"abelian group {book.abelian_subgroup}")
     if book.next_higher is not None:
         group, deviation = book.next_higher
-        parts.append(f"next above {group} within {deviation:.4f} angstrom")
-    if book.point_group != "C1":
-        parts.append(f"labels: {book.frame_note}")
+        parts.append(f"next above {group} within {deviation:.4f}")
     return "; ".join(parts)
 
 
-def _basis(book: BasisBook) -> str:
+def _basis(book: BasisBook, symmetry: SymmetryBook | None) -> str:
+    """Return the size of the basis, and where its functions have irreps how many of each that occurs."""
     if book.n_functions is None:
         return f"{book.name}: functions unknown"
-    by_irrep = ", ".join(f"{name} {n}" for name, n in (book.by_irrep or {}).items())
-    form = f", {book.form}" if book.form else ""
-    return f"{book.name}: {counted(book.n_functions, 'function')}{form}{f' ({by_irrep})' if by_irrep else ''}"
+    size = ", ".join(part for part in (counted(book.n_functions, "function"), book.form) if part)
+    occurring = ", ".join(f"{name} {n}" for name, n in (book.by_irrep or {}).items() if n)
+    if symmetry is None or symmetry.labels_of == "C1" or not occurring:
+        return f"{book.name}: {size}"
+    return f"{book.name}: {size}; in {symmetry.labels_of} {occurring}"
 
 
 def _expected(expected: Expected, page: Page) -> Iterator[str]:

@@ -57,6 +57,7 @@ def _symmetry(book: SymmetryBook) -> dict[str, Any]:
         "point_group": book.point_group,
         "abelian_subgroup": book.abelian_subgroup,
         "deviation_angstrom": round(book.deviation_angstrom, LENGTH_DECIMALS),
+        "labels_of": book.labels_of,
         "frame": book.frame_note,
         "next_higher": None
         if higher is None

@@ -7,9 +7,9 @@ from symmetric_bodies import FAMILIES, Body, annulene, at, body, built, icosahed
 
 from checker.chemistry import symmetry_search
 from checker.chemistry.closure import Closed, Element, enlarged, symbol_of, trivial
-from checker.chemistry.descent import abelian_subgroups
-from checker.chemistry.frames import diagonal_subgroup
-from checker.chemistry.irreps import common_groups, point_group
+from checker.chemistry.descent import abelian_subgroups, operations_of
+from checker.chemistry.irreps import common_groups
+from checker.chemistry.point_groups import standard_operations
 from checker.chemistry.symmetry import MOST_ATOMS, find_symmetry
 from checker.errors import NotDerivable
 
@@ -157,11 +157,17 @@ def test_the_largest_group_wins_over_the_best_fitting_one() -> None:
 
 @pytest.mark.parametrize("group", [*FAMILIES, "D60h", "C7h", "S14"])
 def test_the_abelian_group_is_the_one_of_the_table(group: str) -> None:
-    symbol, indices = diagonal_subgroup(group)
-    assert symbol == abelian_subgroups(group)[0].symbol
-    found = point_group(symbol)
-    assert found is not None
-    assert found.order == len(indices)
+    """The first choice is what is diagonal in the standard frame, and so the largest within D2h."""
+    for choice in abelian_subgroups(group):
+        operations = standard_operations(group)[operations_of(group, choice.symbol)]
+        assert len(operations) == len(standard_operations(choice.symbol))
+        assert np.allclose(choice.turn @ operations @ choice.turn.T, standard_operations(choice.symbol))
+    first = standard_operations(group)[operations_of(group, abelian_subgroups(group)[0].symbol)]
+    diagonal = [matrix for matrix in standard_operations(group) if np.allclose(matrix, np.diag(np.diag(matrix)))]
+    assert len(first) == len(diagonal)
+    assert np.allclose(first * (1.0 - np.eye(3)), 0.0, atol=1e-9)
+    kinds, places = moved(built(group), seed=3)
+    assert find_symmetry(kinds, places).abelian_group == abelian_subgroups(group)[0].symbol
 
 
 def test_abelian_choice_of_td_and_d2d() -> None:

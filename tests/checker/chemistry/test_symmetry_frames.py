@@ -78,6 +78,21 @@ def test_a_molecule_askew_is_told_where_z_went() -> None:
     )
 
 
+def test_a_slight_turn_is_told_by_its_angle() -> None:
+    assert seen("water", turn=about_z(2)).frame_note == "axes nearly as given, off by 2.0 degrees"
+    assert seen("water", turn=IN_TURN @ about_z(2)).frame_note == (
+        "axes exchanged: x, y, z of the labels are z, x, y of the coordinates, off by 2.0 degrees"
+    )
+
+
+def test_only_the_main_axis_counts_where_the_others_leave_the_labels_alone() -> None:
+    for turn in (about_z(90), about_z(25)):
+        for name in ("ammonia", "allene"):
+            assert seen(name, turn=turn).frame_note == seen(name).frame_note
+    assert seen("ammonia", turn=IN_TURN).frame_note == "axes exchanged: z of the labels is y of the coordinates"
+    assert seen("methane", turn=about_z(25)).frame_note == LABELS_WITHOUT_AXES
+
+
 def test_a_turn_within_the_tolerance_is_not_worth_a_word() -> None:
     found = seen("water", turn=about_z(0.2))
     assert found.frame_note == AXES_AS_GIVEN
@@ -139,7 +154,7 @@ def test_a_line_along_x() -> None:
     turn = np.eye(3)[[2, 0, 1]]
     found = seen("carbon dioxide", turn=turn)
     assert np.allclose(np.abs(found.frame[2]), [1, 0, 0])
-    assert found.frame_note == "axes exchanged: x, y, z of the labels are y, z, x of the coordinates"
+    assert found.frame_note == "axes exchanged: z of the labels is x of the coordinates"
     assert found.abelian.frame_note == AXES_AS_GIVEN
     assert np.allclose(np.abs(seen("carbon dioxide", "mulliken", turn).abelian_frame[2]), [1, 0, 0])
     assert found.axis is not None
