@@ -70,6 +70,7 @@ app = typer.Typer(
 
 def main() -> None:
     """Run the command line of this process and exit with its status."""
+    os.environ.setdefault("PYDANTIC_DISABLE_PLUGINS", "__all__")  # none is wanted, and looking for them takes time
     gc.disable()  # nothing made by imports is garbage; _end_of_imports turns it on again
     sys.exit(run(sys.argv[1:]))
 

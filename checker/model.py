@@ -195,17 +195,17 @@ class Acceptance(Table):
 
 
 class Job(Table):
-    """A whole deck."""
+    """A whole deck. Tables left out are made without validation, which would build validators of their own."""
 
     deck_version: Annotated[Literal[1], BeforeValidator(_whole)]
     title: Text | None = None
     species: Species
-    symmetry: Symmetry = Symmetry()
+    symmetry: Symmetry = Symmetry.model_construct()
     occupations: Occupations | None = None
-    treatment: Treatment = Treatment()
+    treatment: Treatment = Treatment.model_construct()
     active_space: ActiveSpace | None = None
     basis: Basis | None = None
     core_potential: CorePotential | None = None
     fragments: tuple[Fragment, ...] = ()
-    resources: Resources = Resources()
+    resources: Resources = Resources.model_construct()
     accepted: tuple[Acceptance, ...] = ()
