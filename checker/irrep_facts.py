@@ -124,7 +124,7 @@ class IrrepFacts:
 
     @cached_property
     def placement_of_report(self) -> "Placement":
-        """The deck's group where the geometry has it, else the abelian one: the labels of the report are its own."""
+        """The deck's group where the geometry has it, else the abelian one: labels of the report are its own."""
         try:
             return self.placement
         except NotDerivable:

@@ -25,7 +25,7 @@ AXES_AS_GIVEN = "axes as given"
 NEARLY_RADIAN = 0.045
 """A turn by less than this, the angle of `CLOSE_TO_AXIS`, is told by its angle alone."""
 
-LABELS_WITHOUT_AXES = "the labels do not depend on the axes"
+LABELS_WITHOUT_AXES = "independent of the axes"
 
 
 @dataclass(frozen=True, eq=False)
@@ -160,7 +160,7 @@ def note_of(symbol: str, frame: Floats, farthest: float, tolerance: float) -> st
     gaps = np.linalg.norm((frame - exchanges)[:, rows], axis=(1, 2)) / (1.0 if len(rows) == 1 else 2**0.5)
     exchange, turn = exchanges[gaps.argmin()][rows], float(gaps.min())
     if turn * farthest > tolerance and turn > NEARLY_RADIAN:
-        return "axes turned: " + _directions(frame)
+        return _turn_words(frame)
     off = f", off by {np.degrees(turn):.1f} degrees" if turn * farthest > tolerance else ""
     letters = [_signed_letter(row, len(rows) > 1) for row in exchange]
     if letters == list(named):
@@ -183,7 +183,9 @@ def _signed_letter(row: Floats, with_sign: bool) -> str:
     return ("-" if with_sign and row.sum() < 0 else "") + "xyz"[int(np.abs(row).argmax())]
 
 
-def _directions(frame: Floats) -> str:
-    """Return where z and x of the labels lie; x fixes what z leaves open."""
+def _turn_words(frame: Floats) -> str:
+    """Return the angle of a turn about z, else where z and x of the labels lie; x fixes what z leaves open."""
+    if frame[2, 2] > 1.0 - EXACT:
+        return f"axes turned by {np.degrees(np.arctan2(frame[0, 1], frame[0, 0])):.1f} degrees about z"
     x, z = (f"({', '.join(f'{c:.3f}' for c in np.round(row, 3) + 0.0)})" for row in (frame[0], frame[2]))
-    return f"z of the labels lies along {z} of the coordinates, x along {x}"
+    return f"axes turned: z of the labels lies along {z} of the coordinates, x along {x}"

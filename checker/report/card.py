@@ -35,7 +35,7 @@ def card(report: DeckReport, page: Page) -> Iterator[str]:
     if report.symmetry is not None:
         yield from page.entry("symmetry", _symmetry(report.symmetry))
         if report.symmetry.point_group != "C1":
-            yield from page.entry("", f"labels of {report.symmetry.labels_of}: {report.symmetry.frame_note}")
+            yield from page.entry("", _labels(report.symmetry))
     if report.basis is not None:
         yield from page.entry("basis", plain(_basis(report.basis, report.symmetry)))
     if report.expected is not None:
@@ -202,14 +202,20 @@ def _formula(books: tuple[ElementBook, ...]) -> str:
 
 
 def _symmetry(book: SymmetryBook) -> str:
-    """Return the group and how exact it is, the abelian group, and the group above."""
-    parts = [f"{book.point_group} within {max(book.deviation_angstrom, EXACT_ANGSTROM):.4f} angstrom"]
-    if book.abelian_subgroup != book.point_group:
-        parts.append(f"abelian group {book.abelian_subgroup}")
-    if book.next_higher is not None:
-        group, deviation = book.next_higher
-        parts.append(f"next above {group} within {deviation:.4f}")
-    return "; ".join(parts)
+    """Return the group and how exact it is, and the group above."""
+    own = f"{book.point_group} within {max(book.deviation_angstrom, EXACT_ANGSTROM):.4f} angstrom"
+    if book.next_higher is None:
+        return own
+    group, deviation = book.next_higher
+    return f"{own}, next above it {group} within {deviation:.4f}"
+
+
+def _labels(book: SymmetryBook) -> str:
+    """Return the abelian group, and in which group and frame labels are given."""
+    if book.labels_of == book.abelian_subgroup != book.point_group:
+        return f"labels of the abelian group {book.labels_of}: {book.frame_note}"
+    abelian = f"abelian group {book.abelian_subgroup}; " if book.abelian_subgroup != book.point_group else ""
+    return f"{abelian}labels of {book.labels_of}: {book.frame_note}"
 
 
 def _basis(book: BasisBook, symmetry: SymmetryBook | None) -> str:

@@ -78,6 +78,10 @@ def test_a_molecule_askew_is_told_where_z_went() -> None:
     )
 
 
+def test_a_turn_about_z_is_told_by_its_angle() -> None:
+    assert seen("water", turn=about_z(30)).frame_note == "axes turned by 30.0 degrees about z"
+
+
 def test_a_slight_turn_is_told_by_its_angle() -> None:
     assert seen("water", turn=about_z(2)).frame_note == "axes nearly as given, off by 2.0 degrees"
     assert seen("water", turn=IN_TURN @ about_z(2)).frame_note == (
