@@ -15,7 +15,7 @@ from checker.findings import DeckReport
 
 FOLDER = Path(__file__).parent.parent / "sample_decks"
 DECLARATION = re.compile(r"must give: (?:(nothing)|([a-z-]+) (halt|doubt|note|accepted) at ([\w.\[\]]+))")
-DECKS = sorted(path for path in FOLDER.iterdir() if path.name.endswith((".deck.toml", ".deck.json", ".xyz")))
+DECKS = sorted(path for path in FOLDER.iterdir() if path.name.endswith((".deck.toml", ".deck.json", ".xyz", ".extxyz")))
 
 
 def declared(text: str) -> list[tuple[str, str, str]]:
@@ -33,7 +33,7 @@ def given(report: DeckReport) -> list[tuple[str, str, str]]:
 def declarations(path: Path) -> list[list[tuple[str, str, str]]]:
     """The declared findings, one list a report: XYZ frames declare theirs on their comment lines."""
     text = path.read_text()
-    if path.suffix != ".xyz":
+    if path.suffix not in (".xyz", ".extxyz"):
         return [declared(text)]
     return [declared(line) for line in text.splitlines() if "must give:" in line]
 
