@@ -295,13 +295,27 @@ class Facts:
 
     @cached_property
     def symmetry(self) -> "Symmetry":
-        """The geometry's point group and frame, ghosts told from atoms; not derivable where it is not settled."""
+        """The geometry's point group and frame, ghosts told from atoms; not derivable where it is not settled.
+
+        Isotopes are one kind of atom: electrons and their irreps do not see the masses.
+        """
+        return self._symmetry_of(2 * self.numbers + self.is_ghost)
+
+    @cached_property
+    def group_with_isotopes(self) -> str | None:
+        """The point group with isotopes told apart, the one of vibrations; None where it is the same."""
+        mass_numbers = self.job.species.atoms.mass_numbers
+        if not mass_numbers.any():
+            return None
+        group = self._symmetry_of(8 * self.numbers + 2 * mass_numbers + self.is_ghost).group
+        return None if group == self.symmetry.group else group
+
+    def _symmetry_of(self, kinds: NDArray[np.int64]) -> "Symmetry":
         from checker.chemistry.symmetry import find_symmetry
 
         if self.is_periodic:
             raise NotDerivable("a geometry with a cell has no point group of its own")
         stated = self.job.symmetry
-        kinds = 2 * self.numbers + self.is_ghost
         choice = "C2v" if stated.point_group and stated.point_group.strip().casefold() == "c2v" else "D2"
         return find_symmetry(kinds, self.coordinates, axes=stated.axes, abelian_choice=choice)
 
@@ -318,7 +332,7 @@ class Facts:
             deviation_angstrom=symmetry.deviation_angstrom,
             labels_of=labels.group,
             frame_note=labels.frame_note,
-            next_higher=symmetry.next_higher,
+            with_isotopes=self.group_with_isotopes,
         )
 
     def atoms_at(self, coordinates: NDArray[np.float64]) -> tuple[Edit, ...]:

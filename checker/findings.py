@@ -178,6 +178,7 @@ class SymmetryBook:
     labels_of : the group whose labels the report uses: the deck's where the geometry has it, else the abelian one.
     frame_note : how the coordinates' axes were turned into those that these labels refer to, in words.
     next_higher : the next group above and its own deviation; None where none is near or it was not asked for.
+    with_isotopes : the group with isotopes told apart, the one of vibrations; None where it is the same.
     """
 
     point_group: str
@@ -186,6 +187,7 @@ class SymmetryBook:
     labels_of: str
     frame_note: str
     next_higher: tuple[str, float] | None = None
+    with_isotopes: str | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

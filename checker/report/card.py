@@ -202,12 +202,12 @@ def _formula(books: tuple[ElementBook, ...]) -> str:
 
 
 def _symmetry(book: SymmetryBook) -> str:
-    """Return the group and how exact it is, and the group above."""
+    """Return the group and how exact it is, the group above, and the one of the isotopes."""
     own = f"{book.point_group} within {max(book.deviation_angstrom, EXACT_ANGSTROM):.4f} angstrom"
-    if book.next_higher is None:
-        return own
-    group, deviation = book.next_higher
-    return f"{own}, next above it {group} within {deviation:.4f}"
+    if book.next_higher is not None:
+        group, deviation = book.next_higher
+        own += f", next above it {group} within {deviation:.4f}"
+    return own if book.with_isotopes is None else f"{own}; {book.with_isotopes} with isotopes told apart"
 
 
 def _labels(book: SymmetryBook) -> str:

@@ -62,6 +62,7 @@ def _symmetry(book: SymmetryBook) -> dict[str, Any]:
         "next_higher": None
         if higher is None
         else {"point_group": higher[0], "deviation_angstrom": round(higher[1], LENGTH_DECIMALS)},
+        "with_isotopes": book.with_isotopes,
     }
 
 

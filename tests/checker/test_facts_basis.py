@@ -17,7 +17,9 @@ def test_functions_of_water() -> None:
     water = facts("O H H", name="cc-pVDZ")
     assert water.n_functions == 24
     assert sorted(water.basis_shells) == [1, 8]
-    assert water.basis_book == BasisBook(name="cc-pVDZ", n_functions=24, form="spherical")
+    assert water.basis_book == BasisBook(
+        name="cc-pVDZ", n_functions=24, form="spherical", by_irrep={"A1": 13, "A2": 1, "B1": 5, "B2": 5}
+    )
 
 
 def test_ghosts_carry_functions() -> None:
@@ -32,7 +34,7 @@ def test_an_element_may_have_a_set_of_its_own() -> None:
 
 def test_a_stated_form_is_taken() -> None:
     assert facts("O H H", name="6-31G(d)").basis_book == BasisBook(
-        name="6-31G(d)", n_functions=19, form="cartesian"
+        name="6-31G(d)", n_functions=19, form="cartesian", by_irrep={"A1": 12, "A2": 1, "B1": 3, "B2": 3}
     )
     assert facts("O H H", name="6-31G(d)", form="spherical").n_functions == 18
 

@@ -10,8 +10,8 @@ from functools import lru_cache
 import numpy as np
 import pytest
 from ase.collections import g2
-from builders import job
 
+from builders import job
 from checker.chemistry.functions import levels_on_axis, levels_per_irrep, n_functions
 from checker.chemistry.point_groups import standard_operations
 from checker.chemistry.relabelling import relabellings
