@@ -3,11 +3,12 @@
 A slip of two in the charge, or of one together with the multiplicity, keeps the parity of the electrons, and only
 the structure can tell it. Formal charges follow from the bonds: open valences at oxygen, nitrogen or a halogen
 close as anions, onium and metal ions have their usual charge. One electron more or fewer is a radical ion and
-passes, unless it would sit on a metal ion with neutral ligands or on an ammonium ion. Not judged where the
-structure leaves a choice (a carbon that may be cation, anion or radical), where a metal of variable charge or a
-bond between metals is there, and for free atoms, which have rules of their own.
+passes, unless it would sit on a metal ion with neutral ligands or on an ammonium ion; so do OH+ and its like as
+triplets, bonds that are partly broken, and two electrons where the intent is "vertical". Not judged where the
+structure leaves a choice (a carbon that may be cation, anion or radical, bare carbon chains), where a metal of
+variable charge or a bond between metals is there, and for free atoms, which have rules of their own.
 
-Passes: NO3, charge -1, multiplicity 1; NO3, charge 0, multiplicity 2 (the radical).
+Passes: NO3, charge -1, multiplicity 1; NO3, charge 0, multiplicity 2 (the radical); B2H6, charge 0.
 Speaks: NO3, charge +1, multiplicity 1; Na with six waters, charge 0, multiplicity 2.
 Source: formal charges as in any textbook; usual charges after Greenwood & Earnshaw, Chemistry of the Elements, 2nd
 ed. (from memory).
@@ -15,7 +16,7 @@ ed. (from memory).
 
 from collections.abc import Iterator
 
-from checker.chemistry.explained import ChargeMismatch, charge_mismatch
+from checker.chemistry.explained import ChargeMismatch, charge_mismatch, may_be_sextet
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, NotJudged, Repair
 from checker.registry import Rule
@@ -34,7 +35,8 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
     if facts.parity_fails:
         yield NotJudged("electron count and multiplicity do not fit, which spin-parity judges")
         return
-    found = charge_mismatch(valence, facts.charge)
+    vertical = facts.intent == "vertical"
+    found = charge_mismatch(valence, facts.charge, facts.stated_multiplicity, vertical=vertical)
     if found is not None:
         yield _finding(facts, found)
 
@@ -52,7 +54,10 @@ def _finding(facts: Facts, found: ChargeMismatch) -> Finding:
             "implied_charge": found.implied,
             "sites": [f"{facts.label(atom)} {_signed(charge)}" for atom, charge in found.sites[:MOST_NAMED]],
         },
-        repairs=(Repair(f"set the charge to {implied}, with closed valences", _edits(facts, found), 0.8),),
+        repairs=(
+            Repair(f"set the charge to {implied}, with closed valences", _edits(facts, found), 0.8),
+            *_as_triplet(facts, found),
+        ),
     )
 
 
@@ -70,6 +75,13 @@ def _edits(facts: Facts, found: ChargeMismatch) -> tuple[Edit, ...]:
     if (found.implied - facts.charge) % 2 == 0:
         return (charge,)
     return charge, Edit("species.multiplicity", 1)
+
+
+def _as_triplet(facts: Facts, found: ChargeMismatch) -> tuple[Repair, ...]:
+    """Offer the triplet that OH+, NH2+ and their like are, where the deck has them as singlets."""
+    if facts.charge != found.implied + 2 or facts.stated_multiplicity != 1 or not may_be_sextet(facts.valence):
+        return ()
+    return (Repair("keep the charge, as a triplet", (Edit("species.multiplicity", 3),), 0.2),)
 
 
 def _signed(charge: int) -> str:

@@ -15,7 +15,7 @@ Theory, 3rd ed., ch. 9 (from memory).
 
 from collections.abc import Iterator
 
-from checker.chemistry.filling import OpenLevel, is_pure, terms_of
+from checker.chemistry.filling import OpenLevel
 from checker.facts import Facts
 from checker.findings import Finding, Grade, Json, NotJudged
 from checker.registry import Rule
@@ -33,7 +33,7 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
         yield NotJudged("the open levels may be those of the active space")
     elif not readings:
         yield _no_level_fits(facts)
-    elif is_pure(irreps.body_group, readings[0]):
+    elif len(irreps.terms_of(readings[0])) == 1:
         yield _one_term(facts, readings[0])
     else:
         yield _mixed_terms(facts, readings[0])
@@ -54,7 +54,7 @@ def _evidence(facts: Facts, level: OpenLevel) -> dict[str, Json]:
         "partners": dict[str, Json](facts.irreps.electrons_per_level[level.irrep]),
         "alpha": dict[str, Json](level.alpha),
         "beta": dict[str, Json](level.beta),
-        "terms": list(terms_of(facts.irreps.body_group, level)),
+        "terms": list(facts.irreps.terms_of(level)) if _only_open(facts, level) else [],
     }
 
 
@@ -70,11 +70,12 @@ def _partners(facts: Facts, level: OpenLevel) -> str:
 
 
 def _one_term(facts: Facts, level: OpenLevel) -> Finding:
-    (term,) = terms_of(facts.irreps.body_group, level)
+    (term,) = facts.irreps.terms_of(level)
+    state = f"a {term}" if _only_open(facts, level) else "a degenerate"
     return Finding(
         at=_key(facts),
         grade=Grade.NOTE,
-        message=f"{_holds(facts, level)}: a {term} state, the same whichever partner is filled",
+        message=f"{_holds(facts, level)}: {state} state, the same whichever partner is filled",
         why="The partners are equal by symmetry; the job describes one component of a degenerate state, and its "
         "density has a lower symmetry than the molecule.",
         evidence=_evidence(facts, level),
@@ -82,7 +83,7 @@ def _one_term(facts: Facts, level: OpenLevel) -> Finding:
 
 
 def _mixed_terms(facts: Facts, level: OpenLevel) -> Finding:
-    terms = " and ".join(terms_of(facts.irreps.body_group, level))
+    terms = " and ".join(facts.irreps.terms_of(level)) if _only_open(facts, level) else "several terms"
     return Finding(
         at=_key(facts),
         message=f"{_holds(facts, level)} of {2 * level.dimension}; one determinant may mix {terms}",
@@ -90,6 +91,16 @@ def _mixed_terms(facts: Facts, level: OpenLevel) -> Finding:
         "need more than one configuration.",
         confidence=0.9,
         evidence=_evidence(facts, level),
+    )
+
+
+def _only_open(facts: Facts, level: OpenLevel) -> bool:
+    """Tell whether all else is doubly filled, so that the terms of the level are those of the state."""
+    alpha, beta = facts.irreps.electrons
+    names = {*alpha, *beta}
+    return all(
+        alpha.get(name, 0) - level.alpha.get(name, 0) == beta.get(name, 0) - level.beta.get(name, 0)
+        for name in names
     )
 
 

@@ -4,8 +4,10 @@ A hydrogen lost in an editor, or two of them, leaves an atom one bond short. If 
 singlet can still be computed, of a molecule nobody meant. Bonds come from covalent radii, multiple bonds from
 pairing what single bonds leave open, shortest first. An open valence is explained by an unpaired electron (CH3 as
 a doublet), by the charge (CH3+, CH3O-), or by a second one on the same atom (a carbene); a radical pair is
-explained by a triplet or by the intent "broken-symmetry". Not judged where parity fails (spin-parity then names
-the atom), and where the bonds cannot be told. Bonds to d- and f-block metals do not count as valences.
+explained by a triplet or by the intent "broken-symmetry", and two open atoms within 0.6 angstrom of a bond's
+length are a bond partly broken. More unpaired electrons than open valences are a matter of multiplicity-out-of-reach.
+Not judged where parity fails (spin-parity then names the atom), where the bonds cannot be told, and in bare carbon
+or silicon clusters. Bonds to d- and f-block metals do not count as valences.
 
 Passes: CH3, charge 0, multiplicity 2; CH2, charge 0, multiplicity 1 or 3.
 Speaks: ethane less one hydrogen at each carbon, C-C still 1.53 angstrom, charge 0, multiplicity 1.
@@ -16,7 +18,7 @@ from collections.abc import Iterator
 
 from checker.chemistry.explained import Explanation, beyond_valence, unexplained_sites
 from checker.facts import Facts
-from checker.findings import Finding, Grade, NotJudged
+from checker.findings import Edit, Finding, Grade, NotJudged, Repair
 from checker.registry import Rule
 
 MOST_NAMED = 4
@@ -49,7 +51,8 @@ def _finding(facts: Facts, found: Explanation) -> Finding:
     message = (
         f"{names} {verb} more neighbours than a usual structure allows; look for an atom too many"
         if found.beyond
-        else f"{names} {are} short of a bond, and {state} do not account for it; look for a lost hydrogen"
+        else f"{names} {are} short of a bond, and {state} do not account for it; look for a lost hydrogen "
+        "or a stretched bond"
     )
     return Finding(
         at=facts.atom_key(found.atoms[0]),
@@ -60,7 +63,16 @@ def _finding(facts: Facts, found: Explanation) -> Finding:
             "atoms": [facts.label(atom) for atom in found.atoms[:MOST_NAMED]],
             "neighbours": [len(facts.valence.bonds.neighbours[atom]) for atom in found.atoms[:MOST_NAMED]],
         },
+        repairs=_as_coupled(facts, found),
     )
+
+
+def _as_coupled(facts: Facts, found: Explanation) -> tuple[Repair, ...]:
+    """Offer to say that two radicals are coupled, as at the end of a bond that is drawn out."""
+    if found.beyond or len(found.atoms) != 2 or facts.stated_multiplicity != 1:
+        return ()
+    edit = Edit("treatment.intent", "broken-symmetry")
+    return (Repair("two coupled radicals are meant, as of a bond drawn out", (edit,), 0.2),)
 
 
 RULE = Rule("open-valence", Grade.DOUBT, judge)

@@ -18,6 +18,9 @@ from checker.tables.structure import cordero_radii, is_covalent
 SHORT_MEDIAN = 0.65
 """A median ratio below this is no molecule in angstrom: G2 in bohr gives 0.41 to 0.61, G2 shrunk by 0.9 0.70."""
 
+SHORT_WITH_METAL = 0.55
+"""The same where metals are: they have large radii and short multiple bonds (0.65 in uranyl, 0.69 in BaO)."""
+
 LONG_MEDIAN = (1.43, 2.25)
 """Median ratios of molecules in bohr that are read as angstrom: G2 gives 1.46 to 2.19; stretched by 1.15, 1.33."""
 
@@ -97,9 +100,17 @@ def length_slip(numbers: Ints, nearest: Nearest) -> LengthSlip | None:
         return None
     median = float(np.sort(ratios)[len(ratios) // 2])
     too_long = LONG_MEDIAN[0] <= median <= LONG_MEDIAN[1] and float(nearest.ratio.min()) > LEAST_LONG
-    if not too_long and median >= SHORT_MEDIAN:
+    if not too_long and (median >= SHORT_MEDIAN or not _too_short(numbers, nearest, tells)):
         return None
     return LengthSlip(too_long, median, len(ratios), _confidence(len(ratios), too_long))
+
+
+def _too_short(numbers: Ints, nearest: Nearest, tells: NDArray[np.bool_]) -> bool:
+    """Tell whether the median is short of what bonds of these kinds can be."""
+    metal = _kinds() == _METAL
+    has_metal = (metal[numbers] | metal[numbers[nearest.partner]])[tells]
+    shares = np.sort(nearest.ratio[tells] / np.where(has_metal, SHORT_WITH_METAL, SHORT_MEDIAN))
+    return float(shares[len(shares) // 2]) < 1.0
 
 
 def _confidence(n_atoms: int, too_long: bool) -> float:

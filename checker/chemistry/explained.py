@@ -1,13 +1,17 @@
 """Whether a stated charge and multiplicity account for the open valences and the charge that bonds imply.
 
-Provides `unexplained_sites`, `beyond_valence`, `ChargeMismatch` and `charge_mismatch`.
+Provides `unexplained_sites`, `beyond_valence`, `ChargeMismatch`, `charge_mismatch` and `may_be_sextet`.
 """
 
+import itertools
+import math
+from collections.abc import Collection
 from dataclasses import dataclass
 
 from checker.chemistry.lewis import TETRELS
 from checker.chemistry.sites import Kind
 from checker.chemistry.valence import Tally, Valence
+from checker.tables.structure import cordero_radii
 
 ROOM_OF_A_LOST_ATOM = 0.75
 """Both ends of a bond of single length must have this much room before two lost hydrogens are suspected."""
@@ -17,6 +21,18 @@ ROOM_OF_A_CATION = 0.5
 
 PI_BONDS_PER_PAIR = 4
 """A conjugated system of this many multiple bonds may take up or give away two electrons (cyclooctatetraene)."""
+
+PARTLY_BROKEN_ANGSTROM = 0.6
+"""Two open atoms no farther apart than the sum of their radii and this are a bond of a transition state."""
+
+BROKEN_ANGSTROM = 1.2
+"""Up to here two open atoms may be the ends of a bond drawn out in a scan, rather than two anions."""
+
+MOST_VERTICAL_ELECTRONS = 2
+"""Electrons that a vertical state may have more or less than a closed structure: a dication, a radical ionised."""
+
+MOST_SITES_PAIRED = 50
+"""So many open atoms are no single bond breaking."""
 
 _OPEN_KINDS = (Kind.ANION, Kind.FLEXIBLE, Kind.CATION)
 
@@ -60,7 +76,14 @@ def unexplained_sites(valence: Valence, charge: int, multiplicity: int) -> Expla
     tally = valence.tally
     if tally.unknown or tally.beyond or tally.subvalent or valence.lewis.gave_up or valence.bonds.overlaps:
         return None
-    if tally.open and not _accounts_for(tally, charge, multiplicity - 1, ion_pairs=_may_be_ion_pairs(valence)):
+    explained = _accounts_for(
+        tally,
+        charge,
+        multiplicity - 1,
+        ion_pairs=_may_be_ion_pairs(valence),
+        loose=_loose_pairs(valence, _OPEN_KINDS, PARTLY_BROKEN_ANGSTROM),
+    )
+    if tally.open and not explained:
         atoms = tuple(site.atom for site in valence.sites if site.kind in _OPEN_KINDS)
         roomiest = sorted(set(atoms), key=lambda atom: (-valence.lewis.room(atom), atom))
         why = "An open valence is an unpaired electron or a charge, and the stated ones do not suffice."
@@ -70,15 +93,24 @@ def unexplained_sites(valence: Valence, charge: int, multiplicity: int) -> Expla
     return None
 
 
-def charge_mismatch(valence: Valence, charge: int) -> ChargeMismatch | None:
+def charge_mismatch(
+    valence: Valence, charge: int, multiplicity: int = 1, *, vertical: bool = False
+) -> ChargeMismatch | None:
     """Return how a stated charge differs from the implied one, or None where it is usual or can be explained.
 
     One electron away is an ionised or attached state and passes, unless the electron would sit on a solvated metal
-    ion or a saturated onium ion. Call it only where `valence.implied_charge` is known.
+    ion or a saturated onium ion. So do two where a vertical state is meant, and OH+ or NH2+ as a triplet. Call it
+    only where `valence.implied_charge` is known.
     """
     implied = valence.implied_charge
     assert implied is not None
     electrons = implied - charge
+    if electrons < 0:
+        electrons = min(0, electrons + 2 * _loose_pairs(valence, (Kind.ANION,), BROKEN_ANGSTROM))
+    if vertical and abs(electrons) <= MOST_VERTICAL_ELECTRONS:
+        return None
+    if electrons == -2 and multiplicity == 3 and may_be_sextet(valence):
+        return None
     if not electrons or (abs(electrons) == 1 and not (electrons == 1 and _holds_no_electron(valence))):
         return None
     if len(valence.lewis.pairing.bonds) >= PI_BONDS_PER_PAIR * (abs(electrons) // 2) > 0:
@@ -88,14 +120,42 @@ def charge_mismatch(valence: Valence, charge: int) -> ChargeMismatch | None:
     return ChargeMismatch(implied, from_bonding, sites, 0.85 if abs(electrons) > 1 else 0.75)
 
 
+def may_be_sextet(valence: Valence) -> bool:
+    """Say whether one atom that closes as an anion could have six electrons instead: a triplet as in OH+, NH2+."""
+    return valence.tally.anions == 1 and not valence.tally.oxo_anions
+
+
+def _loose_pairs(valence: Valence, kinds: Collection[Kind], slack_angstrom: float) -> int:
+    """Pair open atoms that are neither bonded nor share a neighbour, nearest first; return how many pairs."""
+    atoms = sorted({site.atom for site in valence.sites if site.kind in kinds})
+    if not 2 <= len(atoms) <= MOST_SITES_PAIRED:
+        return 0
+    lewis, neighbours = valence.lewis, valence.bonds.neighbours
+    radii = cordero_radii()[lewis.numbers]
+    close = []
+    for i, j in itertools.combinations(atoms, 2):
+        excess = math.dist(lewis.coordinates[i], lewis.coordinates[j]) - float(radii[i] + radii[j])
+        if excess <= slack_angstrom and j not in neighbours[i] and not set(neighbours[i]) & set(neighbours[j]):
+            close.append((excess, i, j))
+    paired: set[int] = set()
+    for _, i, j in sorted(close):
+        if not paired & {i, j}:
+            paired |= {i, j}
+    return len(paired) // 2
+
+
 def _may_be_ion_pairs(valence: Valence) -> bool:
     """Open sites may close as cation and anion by turns, but not those that a hydrogen was taken from."""
     flexible = (site.atom for site in valence.sites if site.kind is Kind.FLEXIBLE)
     return all(valence.lewis.room(atom) < ROOM_OF_A_CATION for atom in flexible)
 
 
-def _accounts_for(tally: Tally, charge: int, unpaired: int, *, ion_pairs: bool) -> bool:
-    """Try every number of sites closed as anions and as cations; one electron more or fewer is let pass."""
+def _accounts_for(tally: Tally, charge: int, unpaired: int, *, ion_pairs: bool, loose: int) -> bool:
+    """Try every number of sites closed as anions and as cations; one electron more or fewer is let pass.
+
+    `loose` pairs of the sites may be bonds in the making. More unpaired electrons than open sites come from bonds,
+    and whether there can be so many is asked elsewhere.
+    """
     sites = tally.open
     excess = charge - tally.base
     for spare in (0, 1, -1):
@@ -106,14 +166,10 @@ def _accounts_for(tally: Tally, charge: int, unpaired: int, *, ion_pairs: bool) 
             if anions and cations and not ion_pairs:
                 continue
             left = sites - anions - cations
-            if unpaired in _reachable(left + abs(spare), tally.carbenes):
+            least = left + abs(spare) - 2 * loose
+            if unpaired >= least and (unpaired - least) % 2 == 0:
                 return True
     return False
-
-
-def _reachable(n_open: int, carbenes: int) -> range:
-    """Unpaired electrons of that many open sites, all alike in spin, with carbenes as singlets or triplets."""
-    return range(n_open, n_open + 2 * carbenes + 1, 2)
 
 
 def _short_by(tally: Tally, charge: int, multiplicity: int) -> int:

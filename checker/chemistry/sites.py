@@ -71,6 +71,7 @@ class _Sites:
         self.numbers = lewis.numbers
         self.bonds = lewis.bonds
         self.anions_beside: dict[int, int] = {}
+        self.bare: set[int] = set()
         self.sites: list[Site] = []
 
     def collect(self) -> list[Site]:
@@ -96,6 +97,8 @@ class _Sites:
         z = int(self.numbers[atom])
         if not self._degree(atom):
             self._lone_atom(atom, z, slots)
+        elif z in TETRELS and self._in_bare_cluster(atom):
+            self._add(atom, Kind.UNKNOWN, 0)
         elif slots == 1:
             kind = self._kind_of_one(atom, z)
             self._add(atom, kind, {Kind.ANION: -1, Kind.CATION: 1}.get(kind, 0))
@@ -107,6 +110,21 @@ class _Sites:
                 self._add(atom, Kind.ANION, -1)
         else:
             self._add(atom, Kind.CARBENE, 0)
+
+    def _in_bare_cluster(self, atom: int) -> bool:
+        """Tell bare carbon or silicon (C2, C3, Si4), whose ends pair in other ways than by usual valences."""
+        seen, waiting = {atom}, [atom]
+        while waiting:
+            for other in self.bonds.neighbours[waiting.pop()]:
+                if other in self.bare:
+                    return True
+                if int(self.numbers[other]) not in TETRELS:
+                    return False
+                if other not in seen:
+                    seen.add(other)
+                    waiting.append(other)
+        self.bare |= seen
+        return True
 
     def _kind_of_one(self, atom: int, z: int) -> Kind:
         """One open valence: atoms with lone pairs and bare carbon ends close as anions, others either way."""
@@ -173,6 +191,9 @@ class _Sites:
         if is_beyond(self.lewis, atom):
             cluster = z in TRIELS
             self._add(atom, Kind.UNKNOWN if cluster else Kind.BEYOND, 0 if cluster else surplus)
+            return
+        if z == 1:
+            self._add(atom, Kind.FIXED, surplus)  # a bridge between two borate-like centres: H+ of B2H6
             return
         charge = min(surplus, valence_electrons()[z] - degree)
         if z in TRIELS | TETRELS:

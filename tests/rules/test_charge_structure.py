@@ -51,6 +51,20 @@ def test_says_what_bonding_implies_and_on_which_atoms() -> None:
     assert finding.repairs[0].edits == (Edit("species.charge", -1),)
 
 
+def test_a_singlet_oxenium_may_have_been_meant_as_the_triplet() -> None:
+    (finding,) = run_rule(RULE, job(rows(of("OH")), charge=+1, multiplicity=1))
+    assert [repair.edits for repair in finding.repairs] == [
+        (Edit("species.charge", -1),),
+        (Edit("species.multiplicity", 3),),
+    ]
+
+
+def test_a_vertical_state_may_have_two_electrons_fewer() -> None:
+    vertical = {"intent": "vertical"}
+    assert not run_rule(RULE, job(rows(of("H2O")), charge=+2, multiplicity=1, treatment=vertical))
+    assert run_rule(RULE, job(rows(of("H2O")), charge=+4, multiplicity=1, treatment=vertical))
+
+
 def test_a_repair_keeps_the_parity() -> None:
     (finding,) = run_rule(RULE, job(rows(sodium_with_six_waters()), charge=0, multiplicity=2))
     assert finding.message == "closed valences give +1, and the deck states 0"

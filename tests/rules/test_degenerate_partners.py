@@ -133,3 +133,14 @@ def test_silent_where_other_axes_explain_it() -> None:
 
 def test_silent_without_occupations() -> None:
     assert run_rule(RULE, job(O2, 0, 3, symmetry={"point_group": "D2h"})) == []
+
+
+def test_beside_another_open_shell_no_term_of_the_level_alone_is_named() -> None:
+    """An excited triplet of hydrogen cyanide, pi to pi*, and one of lithium fluoride, pi to sigma*."""
+    hcn: Atoms = [("H", 0.0, 0.0, -1.07), ("C", 0.0, 0.0, 0.0), ("N", 0.0, 0.0, 1.16)]
+    alpha, beta = {"A1": 5, "B1": 1, "B2": 2}, {"A1": 5, "B1": 1}
+    (mixed,) = judged(hcn, (0, 3), "C2v", alpha, beta)
+    assert mixed.message.endswith("one determinant may mix several terms")
+    lif = along_z("Li", "F", 1.57)
+    (pure,) = judged(lif, (0, 3), "C2v", {"A1": 5, "B1": 1, "B2": 1}, {"A1": 4, "B1": 1})
+    assert "a degenerate state, the same whichever partner is filled" in pure.message

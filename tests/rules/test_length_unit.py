@@ -39,6 +39,7 @@ def test_finds_every_polyatomic_of_g2_in_the_wrong_unit() -> None:
         pytest.param([("Ar", 0, 0, 0), ("Ar", 3.8, 0, 0), ("Ar", 1.9, 3.29, 0)], id="argon_trimer-3.8"),
         pytest.param([("Zn", 0, 0, 0), ("Zn", 4.2, 0, 0), ("Zn", 2.1, 3.6, 0)], id="zinc_trimer-4.2"),
         pytest.param([("H", 0, 0, 1.17 * i) for i in range(6)], id="hydrogen_chain-1.17"),
+        pytest.param([("O", 0, 0, -1.7), ("U", 0, 0, 0), ("O", 0, 0, 1.7)], id="uranyl-1.70"),
         pytest.param([("O", 0, 0, 0), ("H", 0, 0, 1.9)], id="one_distance_only-1.9"),
         pytest.param([("Ne", 0, 0, 0), ("H", 0, 0, 2.3), ("H", 0, 0, 3.04)], id="neon_hydrogen-2.3"),
         pytest.param([("Na", 0, 0, 0), ("Cl", 2.7, 0, 0), ("Na", 2.7, 2.7, 0), ("Cl", 0, 2.7, 0)], id="salt-2.7"),

@@ -7,7 +7,7 @@ from ase.collections import g2
 from shapes import Structure, joined, rows, star, without
 
 from builders import job, run_rule, speak
-from checker.findings import NotJudged
+from checker.findings import Edit, NotJudged
 from rules.open_valence import RULE
 
 
@@ -51,7 +51,9 @@ def test_says_which_atoms_and_what_to_look_for() -> None:
     assert finding.message.startswith(
         "C 1, C 2 are short of a bond, and charge 0 and multiplicity 1 do not account"
     )
-    assert finding.message.endswith("; look for a lost hydrogen")
+    assert finding.message.endswith("; look for a lost hydrogen or a stretched bond")
+    (repair,) = finding.repairs
+    assert repair.edits == (Edit("treatment.intent", "broken-symmetry"),)
     assert finding.evidence == {"atoms": ["C 1", "C 2"], "neighbours": [3, 3]}
 
 

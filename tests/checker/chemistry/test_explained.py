@@ -3,7 +3,7 @@
 import numpy as np
 import pytest
 from ase.build import molecule
-from shapes import Structure, joined, sodium_with_six_waters, star, without
+from shapes import Structure, joined, sodium_with_six_waters, star, structure, without
 
 from checker.chemistry.explained import beyond_valence, charge_mismatch, unexplained_sites
 from checker.chemistry.valence import Valence, assign_valences
@@ -16,6 +16,10 @@ def g2(name: str) -> Structure:
 
 def of(made: Structure) -> Valence:
     return assign_valences(*made)
+
+
+def chain(symbols: str, apart: float) -> Structure:
+    return structure([(symbol, 0.0, 0.0, i * apart) for i, symbol in enumerate(symbols)])
 
 
 CUT_METHANE = without(g2("CH4"), 4)
@@ -38,7 +42,14 @@ ETHANE_LESS_TWO = without(g2("C2H6"), 2, 5)
         pytest.param(joined(CUT_METHANE, CUT_METHANE), 0, 3, True, id="two_cut_methanes_triplet"),
         pytest.param(joined(CUT_METHANE, g2("NH2")), 0, 1, False, id="two_hydrogens_lost_apart"),
         pytest.param(ETHANE_LESS_TWO, 0, 1, False, id="ethane_less_two_hydrogens"),
+        pytest.param(joined(CUT_METHANE, CUT_METHANE), 0, 5, True, id="two_cut_methanes_quintet-excited"),
+        pytest.param(g2("C2H3"), 0, 4, True, id="vinyl_quartet-excited"),
         pytest.param(g2("C2H4"), 0, 1, True, id="ethene"),
+        pytest.param(chain("HHH", 0.93), 0, 2, True, id="hydrogen_exchange-saddle"),
+        pytest.param(chain("FF", 1.7), 0, 1, True, id="fluorine-partly_broken"),
+        pytest.param(chain("FF", 2.4), 0, 1, False, id="fluorine-broken"),
+        pytest.param(chain("CC", 1.243), 0, 1, True, id="dicarbon"),
+        pytest.param(chain("CCC", 1.28), 0, 1, True, id="tricarbon"),
         pytest.param(star("Fe", "Cl", "tetrahedron", 2.2), 0, 1, True, id="metal-not_judged"),
     ],
 )
@@ -85,11 +96,26 @@ def test_a_fifth_neighbour_is_beyond_the_valence_unless_the_charge_says_so() -> 
         pytest.param(g2("C6H6"), -2, 0, id="benzene_dianion"),
         pytest.param(star("S", "O", "tetrahedron", 1.49), 0, -2, id="sulfate_as_neutral"),
         pytest.param(star("S", "O", "tetrahedron", 1.49), -1, None, id="sulfate_radical_anion"),
+        pytest.param(g2("OH"), +1, -1, id="hydroxyl_cation_as_singlet"),
+        pytest.param(chain("FF", 1.9), 0, None, id="fluorine_drawn_out"),
+        pytest.param(chain("FF", 2.8), 0, -2, id="two_fluorines_apart"),
     ],
 )
 def test_the_charge_that_bonds_imply(made: Structure, charge: int, implied: int | None) -> None:
     found = charge_mismatch(of(made), charge)
     assert (found.implied if found else None) == implied
+
+
+@pytest.mark.parametrize("name", ["OH", "SH", "NH2", "CH3O"])
+def test_a_radical_with_lone_pairs_ionises_to_a_triplet(name: str) -> None:
+    """K. P. Huber, G. Herzberg, Constants of Diatomic Molecules (1979): OH+ and SH+ are 3Sigma- (from memory)."""
+    assert charge_mismatch(of(g2(name)), +1, 3) is None
+    assert charge_mismatch(of(g2(name)), +1, 1) is not None
+    assert charge_mismatch(of(g2(name)), +1, 1, vertical=True) is None
+
+
+def test_nitrate_is_no_sextet() -> None:
+    assert charge_mismatch(of(star("N", "O", "trigonal", 1.25)), +1, 3) is not None
 
 
 def test_an_extended_pi_system_may_hold_two_charges() -> None:
