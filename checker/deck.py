@@ -28,6 +28,11 @@ class Deck:
     places: Places
     asides: tuple[Aside, ...] = ()
 
+    @property
+    def is_one_of_many(self) -> bool:
+        """Whether it is one frame of a file that holds several."""
+        return self.name.rpartition("#")[2].isdigit() and "#" in self.name
+
 
 @dataclass(frozen=True, slots=True)
 class UnreadableDeck:

@@ -17,6 +17,7 @@ from checker.findings import (
     Json,
     NotJudged,
     PlacedFinding,
+    SymmetryBook,
     Verdict,
 )
 from checker.model import Acceptance
@@ -56,7 +57,7 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
         findings=findings,
         not_judged=tuple(dict.fromkeys(not_judged)),
         ledger=facts.ledger,
-        symmetry=facts.symmetry_book,
+        symmetry=_symmetry(facts, deck),
         basis=facts.basis_book,
         expected=facts.expected,
         rule_failed=any(finding.rule == "rule-failed" for finding in findings),
@@ -67,6 +68,14 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
 def _atoms_file(deck: Deck) -> str:
     """Return the file that the rows of the atoms stand in; only repairs ask for it, as it needs the places."""
     return deck.places.find("species.atoms[0]").file
+
+
+def _symmetry(facts: Facts, deck: Deck) -> SymmetryBook | None:
+    """Return the symmetry; the group above, which takes longest of all, not for frames by the thousand."""
+    book = facts.symmetry_book
+    if book is None or deck.is_one_of_many:
+        return book
+    return replace(book, next_higher=facts.symmetry.next_higher)
 
 
 def unreadable(deck: UnreadableDeck) -> DeckReport:

@@ -15,7 +15,8 @@ from checker.findings import DeckReport
 
 FOLDER = Path(__file__).parent.parent / "sample_decks"
 DECLARATION = re.compile(r"must give: (?:(nothing)|([a-z-]+) (halt|doubt|note|accepted) at ([\w.\[\]]+))")
-DECKS = sorted(path for path in FOLDER.iterdir() if path.name.endswith((".deck.toml", ".deck.json", ".xyz", ".extxyz")))
+ENDINGS = (".deck.toml", ".deck.json", ".xyz", ".extxyz")
+DECKS = sorted(path for path in FOLDER.iterdir() if path.name.endswith(ENDINGS))
 
 
 def declared(text: str) -> list[tuple[str, str, str]]:

@@ -219,7 +219,7 @@ class _Job:
             yield Cause(
                 kind=Slip.MULTIPLICITY,
                 weight=PRIOR_CORE_SPIN * self._weight(valence, self.charge, multiplicity),
-                reason=f"{self.unpaired_in_core} of the unpaired electrons are f electrons inside the core potential",
+                reason=f"{self.unpaired_in_core} of the unpaired electrons are f electrons in the core potential",
                 multiplicity=multiplicity,
             )
 

@@ -199,6 +199,8 @@ class Symmetry:
 
     def _placed(self, symbol: str, matrices: Floats, axes: str | None = None) -> Placement | None:
         assert isinstance(self._fit, Fit)
+        if symbol == "C1":  # most geometries; nothing to look for
+            return _at_a_point(symbol, len(self.symmetrised))
         lookup = permutations_among(self._fit.operations, self._fit.permutations)
         found = placements(matrices, symbol)
         return place(
@@ -269,7 +271,7 @@ def _refuse_coincidence(body: Body, tolerance: float) -> None:
 
 
 def _at_a_point(symbol: str, n_atoms: int) -> Placement | None:
-    """Place any group on a free atom, whose axes are those given."""
+    """Place any group on a free atom, or C1 on any body: the axes are those given."""
     group = point_group(symbol)
     if group is None:
         return None

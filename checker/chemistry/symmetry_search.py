@@ -72,6 +72,8 @@ def approximate_operations(body: Body, reach: float) -> Found:
     pool, resembles = _pool(body, reach)
     reference = _reference_pair(body, pool, resembles, reach)
     allowed = _allowed_misfit(body, reference, reach)
+    if len(reference.images) == 1 and _is_lopsided(body, reference, allowed):
+        return _identity(len(body))
     matrices, handedness = _candidates(body, reference)
     if len(matrices) * len(body) > _COMPARED_ELEMENTS // 100:
         near = _worst(body, matrices, body.images(matrices, pool), pool) <= allowed
@@ -81,6 +83,23 @@ def approximate_operations(body: Body, reach: float) -> Found:
             f"the search for its symmetry would try {len(matrices)} operations on {len(body)} atoms"
         )
     return _sifted(body, matrices, handedness, allowed, WORST_IN_REACH * reach)
+
+
+def _is_lopsided(body: Body, reference: _Reference, allowed: float) -> bool:
+    """Tell whether reflection in the plane of the reference pair and the centre takes the body elsewhere.
+
+    It is the one operation, but for the identity, that leaves both atoms in place. Under it the heights of each
+    kind of atom over the plane, in order, would have to be those below it.
+    """
+    normal = np.cross(body.positions[reference.first], body.positions[reference.second])
+    heights = body.positions @ (normal / np.linalg.norm(normal))
+    above = heights[np.lexsort((heights, body.kinds))]
+    below = -heights[np.lexsort((-heights, body.kinds))]
+    return bool(np.abs(above - below).max() > allowed)
+
+
+def _identity(n_atoms: int) -> Found:
+    return Found(np.arange(n_atoms)[None], np.ones(1, dtype=np.int64), np.zeros(1))
 
 
 def _sifted(body: Body, matrices: Floats, handedness: Ints, allowed: float, wanted: float) -> Found:

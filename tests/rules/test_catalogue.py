@@ -83,3 +83,9 @@ def test_the_rule_has_a_test_of_its_own(rule: Rule) -> None:
 
 def test_the_engines_rules_are_all_there() -> None:
     assert set(ENGINE_GRADES) <= {rule.id for rule in ALL_RULES}
+
+
+@ONE_EACH
+def test_the_readme_has_a_row_for_the_rule(rule: Rule) -> None:
+    readme = (Path(__file__).parents[2] / "README.md").read_text()
+    assert f"| `{rule.id}` | `{rule.grade.word}` | {rule.title} |" in readme

@@ -48,7 +48,7 @@ def test_f_electrons_inside_the_core_were_counted() -> None:
     gadolinium = np.array([64]), np.zeros((1, 3))
     causes = rank_causes(*gadolinium, 3, 8, replaced={64: 53}, unpaired_in_core=7)
     assert brief(causes[0]) == (Slip.MULTIPLICITY, 1)
-    assert causes[0].reason == "7 of the unpaired electrons are f electrons inside the core potential"
+    assert causes[0].reason == "7 of the unpaired electrons are f electrons in the core potential"
 
 
 def test_weights_fall_and_add_up_to_one() -> None:
