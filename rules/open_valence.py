@@ -4,10 +4,11 @@ A hydrogen lost in an editor, or two of them, leaves an atom one bond short. If 
 singlet can still be computed, of a molecule nobody meant. Bonds come from covalent radii, multiple bonds from
 pairing what single bonds leave open, shortest first. An open valence is explained by an unpaired electron (CH3 as
 a doublet), by the charge (CH3+, CH3O-), or by a second one on the same atom (a carbene); a radical pair is
-explained by a triplet or by the intent "broken-symmetry", and two open atoms within 0.6 angstrom of a bond's
-length are a bond partly broken. More unpaired electrons than open valences are a matter of multiplicity-out-of-reach.
-Not judged where parity fails (spin-parity then names the atom), where the bonds cannot be told, and in bare carbon
-or silicon clusters. Bonds to d- and f-block metals do not count as valences.
+explained by a triplet or by the intent "broken-symmetry". Two open atoms within 0.6 angstrom of a bond's length
+are a bond partly broken, as in a transition state. That more electrons are unpaired than valences are open is a
+matter of multiplicity-out-of-reach. Not judged where parity fails (spin-parity then names the atom),
+where the bonds cannot be told, and in bare carbon or silicon clusters. Bonds to d- and f-block metals do not count
+as valences.
 
 Passes: CH3, charge 0, multiplicity 2; CH2, charge 0, multiplicity 1 or 3.
 Speaks: ethane less one hydrogen at each carbon, C-C still 1.53 angstrom, charge 0, multiplicity 1.

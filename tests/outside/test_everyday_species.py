@@ -1,8 +1,8 @@
 """No false alarm on species that are computed every day, at their own charge and multiplicity, under all rules.
 
 S22: P. Jurecka et al., Phys. Chem. Chem. Phys. 8, 1985 (2006), as ASE ships it. The other geometries are rounded
-common values (no source); charges and multiplicities are common knowledge, those of diatomics after K. P. Huber, G.
-Herzberg, Constants of Diatomic Molecules (1979) (from memory).
+common values (no source). Charges and multiplicities are common knowledge, those of diatomics after K. P. Huber,
+G. Herzberg, Constants of Diatomic Molecules (1979) (from memory).
 """
 
 import numpy as np
