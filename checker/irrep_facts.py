@@ -14,7 +14,7 @@ from numpy.typing import NDArray
 
 from checker.chemistry.characters import known_group
 from checker.chemistry.descent import Correlation, correlation
-from checker.chemistry.filling import electron_correlation, fills_whole_levels, is_pure, open_levels
+from checker.chemistry.filling import electron_correlation, fills_whole_levels, open_levels, terms_of
 from checker.chemistry.functions import Form, levels_on_axis, levels_per_irrep
 from checker.chemistry.irrep_names import read_orbital
 from checker.chemistry.point_groups import INVERSION, indices_of, standard_operations
@@ -205,13 +205,18 @@ class IrrepFacts:
         found = (open_levels(into, alpha, beta, most) for most in self._limits)
         return next((levels for levels in found if levels), ())
 
+    def terms_of(self, level: "OpenLevel") -> tuple[str, ...]:
+        """Return the terms of the body's group that a determinant with such an open level may belong to."""
+        partners = self.electrons_per_level[level.irrep]
+        return terms_of(self.body_group, level, self.group, partners, self.states_per_level)
+
     def is_consistent(self, alpha: Counts, beta: Counts) -> bool:
         """Tell whether an occupation fits the shells of its atoms and is of one term, as a ground state's is."""
         holds = self.minimal_functions
         if any(n > holds.get(name, 0) for counts in (alpha, beta) for name, n in counts.items()):
             return False
         readings = self.readings(alpha, beta)
-        return readings is None or any(is_pure(self.body_group, level) for level in readings[:1])
+        return readings is None or (readings != () and len(self.terms_of(readings[0])) == 1)
 
     @cached_property
     def other_axes(self) -> tuple[Relabelling, ...]:

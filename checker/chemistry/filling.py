@@ -147,26 +147,42 @@ def _one_less(most: Mapping[str, int] | None, irrep: str) -> dict[str, int] | No
     return None if most is None else {**most, irrep: most.get(irrep, 0) - 1}
 
 
-def terms_of(group: str, level: OpenLevel) -> tuple[str, ...]:
+def terms_of(
+    group: str, level: OpenLevel, subgroup: str, partners: Mapping[str, int], below: Correlation
+) -> tuple[str, ...]:
     """Return the terms that a determinant with such an open level may belong to, the highest multiplicity first.
 
-    They are named ``3Σg-``, ``1Δg``, ``1Σg+``. With n more electrons of one spin than of the other, no term has a
-    lower multiplicity than n + 1; where both spins fill the same orbitals it is a singlet.
+    They are named ``3Σg-``, ``1Δg``, ``1Σg+``; a term that occurs twice stands twice, so a determinant is of one
+    term where one stands here. With n more electrons of one spin than of the other no multiplicity is below n + 1;
+    where both spins fill the same orbitals it is 1. And what the term becomes in the subgroup must hold an irrep
+    of the product of the partners that are filled.
+
+    Parameters
+    ----------
+    group, subgroup : the body's and the deck's, by which `level` counts.
+    partners : electrons of one spin that fill the level, by irrep of the subgroup.
+    below : the correlation of the two groups, of states.
+
     """
     terms = terms_of_levels(group, {level.irrep: level.n_electrons})
     lowest = abs(level.n_alpha - level.n_beta) + 1
     highest = 1 if dict(level.alpha) == dict(level.beta) else level.n_electrons + 1
-    named = sorted((term for term in terms if lowest <= term[0] <= highest), key=lambda term: -term[0])
-    return tuple(f"{multiplicity}{irrep}" for multiplicity, irrep in named)
+    irreps = _product_of_filled(subgroup, level, partners)
+    possible = [
+        (multiplicity, irrep)
+        for multiplicity, irrep in terms
+        if lowest <= multiplicity <= highest and (irrep not in below or irreps & below[irrep].keys())
+    ]
+    in_order = sorted(possible, key=lambda term: -term[0])
+    return tuple(f"{term[0]}{term[1]}" for term in in_order for _ in range(terms[term]))
 
 
-def is_pure(group: str, level: OpenLevel) -> bool:
-    """Tell whether every determinant with such an open level belongs to one term, whichever partner is filled.
-
-    So it is where one spin fills the level wholly or not at all, and the states of the other span one irrep.
-    """
-    partial = [n for n in (level.n_alpha, level.n_beta) if 0 < n < level.dimension]
-    return len(partial) < 2 and all(len(exterior_power(group, level.irrep, n)) == 1 for n in partial)
+def _product_of_filled(subgroup: str, level: OpenLevel, partners: Mapping[str, int]) -> frozenset[str]:
+    """Return the irreps of the subgroup that the electrons in a level have together."""
+    dimensions = {irrep.name: irrep.dimension for irrep in known_group(subgroup).irreps}
+    each_once = all(dimensions[name] == n for name, n in partners.items())
+    alpha, beta = (state_irreps(subgroup, part, one_level=each_once) for part in (level.alpha, level.beta))
+    return frozenset(name for a in alpha for b in beta for name in product(subgroup, a, b))
 
 
 def state_irreps(group: str, unpaired: Mapping[str, int], one_level: bool = True) -> frozenset[str]:

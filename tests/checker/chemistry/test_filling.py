@@ -2,12 +2,11 @@
 
 import pytest
 
-from checker.chemistry.descent import abelian_correlation
+from checker.chemistry.descent import abelian_correlation, abelian_subgroups
 from checker.chemistry.filling import (
     OpenLevel,
     electron_correlation,
     fills_whole_levels,
-    is_pure,
     missing_partners,
     open_levels,
     state_irreps,
@@ -23,6 +22,12 @@ S_AND_P = {"Σg+": 8, "Σu+": 8, "Πg": 3, "Πu": 3}
 
 def with_more(**further: int) -> dict[str, int]:
     return {name: N2.get(name, 0) + further.get(name, 0) for name in {**N2, **further}}
+
+
+def terms_in(group: str, subgroup: str, level: OpenLevel) -> tuple[str, ...]:
+    turn = next(choice.turn for choice in abelian_subgroups(group) if choice.symbol == subgroup)
+    partners = electron_correlation(group, subgroup, turn)[level.irrep]
+    return terms_of(group, level, subgroup, partners, abelian_correlation(group, subgroup))
 
 
 @pytest.mark.parametrize(
@@ -51,37 +56,64 @@ def test_levels_that_the_basis_lacks_fill_nothing() -> None:
 
 
 @pytest.mark.parametrize(
-    ("alpha", "beta", "terms", "pure"),
+    ("alpha", "beta", "terms"),
     [
-        pytest.param({"B2g": 1}, {}, ("2Πg",), True, id="one_electron"),
-        pytest.param({"B2g": 1, "B3g": 1}, {"B3g": 1}, ("2Πg",), True, id="three_electrons"),
-        pytest.param({"B2g": 1}, {"B2g": 1}, ("1Σg+", "1Δg"), False, id="closed_shell_pi2"),
-        pytest.param({"B2g": 1}, {"B3g": 1}, ("3Σg-", "1Σg+", "1Δg"), False, id="one_in_each_with_opposite_spins"),
+        pytest.param({"B2g": 1}, {}, ("2Πg",), id="one_electron"),
+        pytest.param({"B2g": 1, "B3g": 1}, {"B3g": 1}, ("2Πg",), id="three_electrons"),
+        pytest.param({"B2g": 1}, {"B2g": 1}, ("1Σg+", "1Δg"), id="closed_shell_pi2"),
+        pytest.param({"B2g": 1}, {"B3g": 1}, ("3Σg-", "1Δg"), id="one_in_each_with_opposite_spins"),
     ],
 )
-def test_dioxygen_and_its_ions(
-    alpha: dict[str, int], beta: dict[str, int], terms: tuple[str, ...], pure: bool
-) -> None:
+def test_dioxygen_and_its_ions(alpha: dict[str, int], beta: dict[str, int], terms: tuple[str, ...]) -> None:
     """Herzberg (1950): pi and pi^3 are 2Π, pi^2 is 3Σ- with 1Δ and 1Σ+."""
     level = open_levels(LINEAR, with_more(**alpha), with_more(**beta), S_AND_P)[0]
     assert level.irrep == "Πg"
-    assert sorted(terms_of("D∞h", level)) == sorted(terms)
-    assert is_pure("D∞h", level) is pure
+    assert sorted(terms_in("D∞h", "D2h", level)) == sorted(terms)
 
 
 @pytest.mark.parametrize("alpha", [{"B1u": 1, "B2u": 1}, {"B1u": 1, "B3u": 1}, {"B2u": 1, "B3u": 1}])
 def test_any_two_p_orbitals_of_carbon_are_the_same_term(alpha: dict[str, int]) -> None:
     (level,) = open_levels(ATOM, {"Ag": 2, **alpha}, {"Ag": 2}, SP_ATOM)
     assert level == OpenLevel("Pu", 3, alpha, {})
-    assert terms_of("Kh", level) == ("3Pg",)
-    assert is_pure("Kh", level)
+    assert terms_in("Kh", "D2h", level) == ("3Pg",)
 
 
 def test_two_d_electrons_may_mix_terms() -> None:
     """E. U. Condon & G. H. Shortley: d2 has 3F and 3P, and a determinant of real orbitals may be a mixture."""
     level = OpenLevel("Dg", 5, {"B2g": 1, "B3g": 1}, {})
-    assert terms_of("Kh", level) == ("3Pg", "3Fg")
-    assert not is_pure("Kh", level)
+    assert terms_in("Kh", "D2h", level) == ("3Pg", "3Fg")
+
+
+@pytest.mark.parametrize(
+    ("alpha", "terms"),
+    [
+        pytest.param({"B1g": 1, "B2g": 1, "B3g": 1}, ("4Fg",), id="t2g_of_an_octahedron"),
+        pytest.param({"Ag": 2, "B1g": 1}, ("4Pg", "4Fg"), id="eg_and_one_more"),
+    ],
+)
+def test_three_d_electrons_may_be_of_one_term(alpha: dict[str, int], terms: tuple[str, ...]) -> None:
+    """A2g of Oh comes from 4F alone, T1g from 4F and 4P (Y. Tanabe & S. Sugano, 1954; from memory)."""
+    assert terms_in("Kh", "D2h", OpenLevel("Dg", 5, alpha, {})) == terms
+
+
+@pytest.mark.parametrize(
+    ("group", "subgroup", "level", "terms"),
+    [
+        pytest.param("D4h", "D2h", OpenLevel("Eg", 2, {"B2g": 1}, {"B2g": 1}), ("1A1g", "1B1g"), id="closed_e2"),
+        pytest.param("D4h", "D2h", OpenLevel("Eg", 2, {"B2g": 1}, {"B3g": 1}), ("3A2g", "1B2g"), id="open_e2"),
+        pytest.param("Td", "D2", OpenLevel("T2", 3, {"B1": 1}, {"B1": 1}), ("1A1", "1E"), id="closed_t2_squared"),
+        pytest.param("Td", "D2", OpenLevel("T2", 3, {"B1": 1, "B2": 1}, {}), ("3T1",), id="high_spin_t2_squared"),
+        pytest.param("Td", "C2v", OpenLevel("T2", 3, {"A1": 1, "B1": 1}, {}), ("3T1",), id="the_same_in_c2v"),
+        pytest.param("C3v", "Cs", OpenLevel("E", 2, {"A'": 1}, {"A'": 1}), ("1A1", "1E"), id="closed_e2_in_cs"),
+        pytest.param("C3v", "Cs", OpenLevel("E", 2, {"A'": 1}, {"A''": 1}), ("3A2", "1E"), id="open_e2_in_cs"),
+        pytest.param("C∞v", "C2v", OpenLevel("Δ", 2, {"A2": 1}, {"A2": 1}), ("1Σ+", "1Γ"), id="closed_delta2"),
+    ],
+)
+def test_terms_that_a_determinant_mixes(
+    group: str, subgroup: str, level: OpenLevel, terms: tuple[str, ...]
+) -> None:
+    """Herzberg 1966: e2 of C3v 3A2 1A1 1E, of D4h 3A2g 1A1g 1B1g 1B2g; t2 squared 3T1 1A1 1E 1T2 (memory)."""
+    assert terms_in(group, subgroup, level) == terms
 
 
 def test_the_lowest_reading_comes_first() -> None:
