@@ -33,6 +33,7 @@ if TYPE_CHECKING:
 
 UNSTATED_MULTIPLICITY = "the deck states no multiplicity"
 PLACE_DIGITS = 6  # of the coordinates that a repair writes
+NEW_PLACE_DIGITS = 4  # of an atom that was not there, whose place is a proposal
 
 
 class Facts:
@@ -333,6 +334,15 @@ class Facts:
             labels_of=labels.group,
             frame_note=labels.frame_note,
             with_isotopes=self.group_with_isotopes,
+        )
+
+    def atoms_added(self, symbol: str, *places: tuple[float, float, float]) -> tuple[Edit, ...]:
+        """Return the edits that add atoms of an element after those of the deck, at places in angstrom."""
+        unit = ANGSTROM_PER_BOHR if self.job.species.length_unit == "bohr" else 1.0
+        first = len(self.numbers)
+        return tuple(
+            Edit(f"species.atoms[{first + i}]", [symbol, *(round(x / unit, NEW_PLACE_DIGITS) for x in place)])
+            for i, place in enumerate(places)
         )
 
     def atoms_at(self, coordinates: NDArray[np.float64]) -> tuple[Edit, ...]:

@@ -47,7 +47,7 @@ def _by_molecules(facts: Facts) -> list[Caution]:
     if not 1 < len(facts.real_numbers) <= LARGEST_SYSTEM or not may_hold_some(facts.elements):
         return []
     try:
-        return of_molecules(facts.real_numbers, facts.valence.bonds)
+        return of_molecules(facts.real_numbers, facts.valence.bonds, by_formula=facts.charge == 0)
     except NotDerivable:
         return []
 

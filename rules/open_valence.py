@@ -18,6 +18,7 @@ Source: B. Cordero et al., Dalton Trans. 2008, 2832 for the radii; the tolerance
 from collections.abc import Iterator
 
 from checker.chemistry.explained import Explanation, beyond_valence, unexplained_sites
+from checker.chemistry.hydrogens import lost_hydrogens
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, NotJudged, Repair
 from checker.registry import Rule
@@ -64,8 +65,20 @@ def _finding(facts: Facts, found: Explanation) -> Finding:
             "atoms": [facts.label(atom) for atom in found.atoms[:MOST_NAMED]],
             "neighbours": [len(facts.valence.bonds.neighbours[atom]) for atom in found.atoms[:MOST_NAMED]],
         },
-        repairs=_as_coupled(facts, found),
+        repairs=(*_with_hydrogens(facts, found), *_as_coupled(facts, found)),
     )
+
+
+def _with_hydrogens(facts: Facts, found: Explanation) -> tuple[Repair, ...]:
+    """Offer to put a hydrogen back on each of the atoms, where the geometry has a place for it."""
+    if found.beyond or len(found.atoms) > MOST_NAMED:
+        return ()
+    places = {lost.atom: lost.position for lost in lost_hydrogens(facts.valence) if lost.position is not None}
+    if any(atom not in places for atom in found.atoms):
+        return ()
+    names = " and ".join(facts.label(atom) for atom in found.atoms)
+    edits = facts.atoms_added("H", *(places[atom] for atom in found.atoms))
+    return (Repair(f"add a hydrogen to {names}", edits, 0.8),)
 
 
 def _as_coupled(facts: Facts, found: Explanation) -> tuple[Repair, ...]:

@@ -18,8 +18,7 @@ from typing import TYPE_CHECKING
 from checker.elements import symbol_of
 from checker.errors import NotDerivable
 from checker.facts import Facts
-from checker.findings import Edit, Finding, Grade, Json, NotJudged, Repair
-from checker.geometry import ANGSTROM_PER_BOHR
+from checker.findings import Edit, Finding, Grade, NotJudged, Repair
 from checker.registry import Rule
 
 if TYPE_CHECKING:
@@ -64,10 +63,8 @@ def _charge(_: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
 
 def _add_hydrogen(facts: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:
     assert cause.position is not None
-    unit = ANGSTROM_PER_BOHR if facts.job.species.length_unit == "bohr" else 1.0
-    row: list[Json] = ["H", *(round(value / unit, 4) for value in cause.position)]
     (atom,) = cause.atoms
-    return f"add a hydrogen to {facts.label(atom)}", (Edit(f"species.atoms[{len(facts.numbers)}]", row),)
+    return f"add a hydrogen to {facts.label(atom)}", facts.atoms_added("H", cause.position)
 
 
 def _drop_hydrogen(facts: Facts, cause: "Cause") -> tuple[str, tuple[Edit, ...]]:

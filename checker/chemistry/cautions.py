@@ -39,15 +39,19 @@ def of_elements(numbers: Iterable[int]) -> list[Caution]:
     return [_of_elements()[z] for z in sorted(set(numbers)) if z in _of_elements()]
 
 
-def of_molecules(numbers: Ints, bonds: Bonds) -> list[Caution]:
-    """Return the cautions of substances by formula and of groups by their bonds, each once."""
-    whole = _of_formulas().get(hill_formula(numbers))
+def of_molecules(numbers: Ints, bonds: Bonds, *, by_formula: bool = True) -> list[Caution]:
+    """Return the cautions of substances by formula and of groups by their bonds, each once.
+
+    Formulas are those of neutral substances: nitrite is no nitrogen dioxide.
+    """
+    formulas = _of_formulas() if by_formula else {}
+    whole = formulas.get(hill_formula(numbers))
     if whole is not None:  # bonds to metals join no molecules, so carbonyls are known as a whole only
         return [whole]
     found: dict[Caution, None] = {}
     listed = numbers.tolist()
     for molecule in _molecules(bonds):
-        known = _of_formulas().get(hill_formula(numbers[molecule]))
+        known = formulas.get(hill_formula(numbers[molecule]))
         for caution in [known] if known else _of_groups(listed, bonds, molecule):
             found[caution] = None
     return list(found)

@@ -103,9 +103,15 @@ def _read_otherwise(group: PointGroup, written: str, bare: str | None = None) ->
     return Reading(written, None, candidates=nearest_irreps(group, bare or written))
 
 
+_PRIMES = str.maketrans({'"': "''", "\u2032": "'", "\u2033": "''", "\u2019": "'", "\u201d": "''"})
+
+
 def find_irrep(group: PointGroup, written: str) -> Irrep | None:
-    """Return the irrep that bears the name, case ignored, Greek letters also spelled out; else None."""
-    return group.by_name.get(written.strip().casefold())
+    """Return the irrep that bears the name, case ignored, Greek letters also spelled out; else None.
+
+    Primes may be written with any of the marks that look like one or two of them.
+    """
+    return group.by_name.get(written.strip().casefold().translate(_PRIMES))
 
 
 def find_orbital_irrep(group: PointGroup, written: str) -> Irrep | None:

@@ -52,8 +52,9 @@ def test_says_which_atoms_and_what_to_look_for() -> None:
         "C 1, C 2 are short of a bond, and charge 0 and multiplicity 1 do not account"
     )
     assert finding.message.endswith("; look for a lost hydrogen or a stretched bond")
-    (repair,) = finding.repairs
-    assert repair.edits == (Edit("treatment.intent", "broken-symmetry"),)
+    hydrogens, coupled = finding.repairs
+    assert [edit.key for edit in hydrogens.edits] == ["species.atoms[6]", "species.atoms[7]"]
+    assert coupled.edits == (Edit("treatment.intent", "broken-symmetry"),)
     assert finding.evidence == {"atoms": ["C 1", "C 2"], "neighbours": [3, 3]}
 
 
@@ -75,3 +76,17 @@ def test_is_silent_on_g2(name: str) -> None:
     multiplicity = round(sum(system.get_initial_magnetic_moments())) + 1
     made = (np.array(system.numbers), np.array(system.positions))
     assert not run_rule(RULE, job(rows(made), multiplicity=multiplicity))
+
+
+def test_hydrogens_are_offered_for_both_ends_and_mend_it() -> None:
+    """Ethane less one hydrogen at each carbon, the C-C bond as it was."""
+    ethane = molecule("C2H6")
+    rows = [(s, *map(float, p)) for s, p in zip(ethane.get_chemical_symbols(), ethane.positions, strict=True)]
+    lost = next(i for i, row in enumerate(rows) if row[0] == "H" and ethane.get_distance(0, i) < 1.2)
+    other = next(i for i, row in enumerate(rows) if row[0] == "H" and ethane.get_distance(1, i) < 1.2)
+    short = [row for i, row in enumerate(rows) if i not in (lost, other)]
+    (finding,) = run_rule(RULE, job(short, 0, 1))
+    first = finding.repairs[0]
+    assert first.say == "add a hydrogen to C 1 and C 2"
+    mended = short + [tuple(edit.value) for edit in first.edits]  # type: ignore[arg-type]
+    assert run_rule(RULE, job(mended, 0, 1)) == []
