@@ -14,7 +14,7 @@ from numpy.typing import NDArray
 
 from checker.chemistry.characters import known_group
 from checker.chemistry.descent import Correlation, correlation
-from checker.chemistry.filling import electron_correlation, fills_whole_levels, open_levels, terms_of
+from checker.chemistry.filling import electron_correlation, fill_whole_levels, open_levels, terms_of
 from checker.chemistry.functions import Form, levels_on_axis, levels_per_irrep
 from checker.chemistry.irrep_names import read_orbital
 from checker.chemistry.point_groups import INVERSION, indices_of, standard_operations
@@ -200,10 +200,13 @@ class IrrepFacts:
 
     def _readings(self, alpha: Counts, beta: Counts) -> tuple["OpenLevel", ...] | None:
         into = self.electrons_per_level
-        if any(all(fills_whole_levels(into, counts, most) for counts in (alpha, beta)) for most in self._limits):
-            return None
-        found = (open_levels(into, alpha, beta, most) for most in self._limits)
-        return next((levels for levels in found if levels), ())
+        for most in self._limits:
+            if fill_whole_levels(into, alpha, beta, most):
+                return None
+            found = open_levels(into, alpha, beta, most)
+            if found:
+                return found
+        return ()
 
     def terms_of(self, level: "OpenLevel") -> tuple[str, ...]:
         """Return the terms of the body's group that a determinant with such an open level may belong to."""
@@ -229,10 +232,22 @@ class IrrepFacts:
             return ()
         found: list[tuple[tuple[Counts, Counts], Relabelling]] = []
         for other in relabellings(self.group):
+            if self._keeps_open_level(other):
+                continue
             moved = (other.applied_to(alpha), other.applied_to(beta))
             if moved not in [known for known, _ in found] and self.is_consistent(*moved):
                 found.append((moved, other))
         return tuple(other for _, other in found)
+
+    def _keeps_open_level(self, other: Relabelling) -> bool:
+        """Tell whether the level that seems partly filled has the same partners in the other axes.
+
+        Then it is filled no more evenly there, and counts that look whole are those of some other levels.
+        """
+        if not self.stated_readings:
+            return False
+        partners = set(self.electrons_per_level[self.stated_readings[0].irrep])
+        return {other.names[name] for name in partners} == partners
 
     @cached_property
     def equal_axes(self) -> tuple[Relabelling, ...]:

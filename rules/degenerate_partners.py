@@ -61,7 +61,10 @@ def _evidence(facts: Facts, level: OpenLevel) -> dict[str, Json]:
 def _holds(facts: Facts, level: OpenLevel) -> str:
     plural = "electron" if level.n_electrons == 1 else "electrons"
     partners = "" if facts.irreps.group == facts.irreps.body_group else f", here {_partners(facts, level)},"
-    return f"a {level.irrep} level of {facts.irreps.body_group}{partners} holds {level.n_electrons} {plural}"
+    article = "an" if level.irrep[0] in "AEFHIS" else "a"
+    return (
+        f"{article} {level.irrep} level of {facts.irreps.body_group}{partners} holds {level.n_electrons} {plural}"
+    )
 
 
 def _partners(facts: Facts, level: OpenLevel) -> str:

@@ -8,7 +8,7 @@ Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., ch. 9 (fro
 """
 
 import itertools
-from collections.abc import Iterator, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 from checker.chemistry.characters import known_group
@@ -19,6 +19,9 @@ from checker.chemistry.products import exterior_power, product, terms_of_levels
 
 HIGHEST_OCCUPIED = 3
 """Angular momentum of the highest orbitals that are occupied in any ground state: f in atoms, phi in molecules."""
+
+MOST_READINGS = 4
+"""So many readings of an occupation are given, the likeliest ones."""
 
 MOST_PARTNERS = 4
 """Partners are sought among so many further states at most; a state of Ih has four partners."""
@@ -50,6 +53,11 @@ class OpenLevel:
     def n_beta(self) -> int:
         """Beta electrons in the level."""
         return sum(self.beta.values())
+
+    @property
+    def n_spins_in_part(self) -> int:
+        """Of how many spins the level holds some electrons and not all that it can."""
+        return sum(0 < n < self.dimension for n in (self.n_alpha, self.n_beta))
 
     @property
     def n_electrons(self) -> int:
@@ -88,10 +96,30 @@ def fills_whole_levels(into: Correlation, electrons: Mapping[str, int], most: Ma
     return bool(possible_levels(into, electrons, most, limit=1))
 
 
+def fill_whole_levels(
+    into: Correlation, alpha: Mapping[str, int], beta: Mapping[str, int], most: Mapping[str, int] | None
+) -> bool:
+    """Tell whether the electrons of both spins can be whole levels.
+
+    Where no irrep holds more electrons of the rarer spin, as in restricted orbitals, the unpaired ones too must be
+    whole levels; else a level that the one spin fills could be lacking for the other.
+    """
+    unpaired = _unpaired(alpha, beta)
+    return all(fills_whole_levels(into, counts, most) for counts in (alpha, beta, unpaired or {}))
+
+
+def _unpaired(alpha: Mapping[str, int], beta: Mapping[str, int]) -> dict[str, int] | None:
+    """Return by how much one spin exceeds the other, None where each does in some irrep."""
+    excess = _without(alpha, beta)
+    if all(n <= 0 for n in excess.values()):
+        excess = {name: -n for name, n in excess.items()}
+    return excess if all(n >= 0 for n in excess.values()) else None
+
+
 def open_levels(
     into: Correlation, alpha: Mapping[str, int], beta: Mapping[str, int], most: Mapping[str, int] | None = None
 ) -> tuple[OpenLevel, ...]:
-    """Return the ways to read an occupation with one degenerate level partly filled; empty where there is none.
+    """Return ways to read an occupation with one degenerate level partly filled; empty where there is none.
 
     Parameters
     ----------
@@ -99,44 +127,41 @@ def open_levels(
     alpha, beta : electrons of each spin by irrep of the deck's group.
     most : the levels there are of each irrep of the full group; None where that is unknown.
 
-    An occupation that fills whole levels needs no such reading; ask `fills_whole_levels` first.
+    An occupation that fills whole levels needs no such reading; ask `fill_whole_levels` first. Readings that leave
+    the fewest unpaired electrons to other levels stand first, then those with the level in part for one spin only,
+    then the smallest levels; the first few are given.
     """
-    alpha_parts, beta_parts = (dict(_parts(into, counts, most)) for counts in (alpha, beta))
-    found = []
-    for irrep, level in into.items():
-        filled = fills_whole_levels(into, _without(alpha, level), _one_less(most, irrep))
-        for first, second in itertools.product(alpha_parts.get(irrep, ()), beta_parts.get(irrep, ())):
-            if first:
-                found.append(OpenLevel(irrep, sum(level.values()), first, second))
-            elif second:  # what beta fills in part alpha fills wholly, if it can
-                found.append(OpenLevel(irrep, sum(level.values()), dict(level) if filled else {}, second))
-    return tuple(sorted(found, key=lambda level: (level.dimension, level.n_electrons)))
+    candidates = [
+        OpenLevel(irrep, sum(level.values()), first, second)
+        for irrep, level in into.items()
+        if sum(level.values()) > 1 and (most is None or most.get(irrep, 0) > 0)
+        for first, second in itertools.product(_parts(level, alpha), _parts(level, beta))
+        if not {sum(first.values()), sum(second.values())} <= {0, sum(level.values())}
+    ]
+    candidates.sort(
+        key=lambda a: (_n_unpaired_beside(a, alpha, beta), a.n_spins_in_part, a.dimension, a.n_electrons)
+    )
+    fitting = (
+        level
+        for level in candidates
+        if fill_whole_levels(
+            into, _without(alpha, level.alpha), _without(beta, level.beta), _one_less(most, level.irrep)
+        )
+    )
+    return tuple(itertools.islice(fitting, MOST_READINGS))
 
 
-def _parts(
-    into: Correlation, counts: Mapping[str, int], most: Mapping[str, int] | None
-) -> Iterator[tuple[str, list[dict[str, int]]]]:
-    """Yield for each degenerate irrep the parts of a level of it, without which the rest fills whole levels."""
-    whole = fills_whole_levels(into, counts, most)
-    for irrep, level in into.items():
-        if sum(level.values()) == 1 or (most is not None and most.get(irrep, 0) < 1):
-            continue
-        if whole:
-            yield irrep, [{}]
-            continue
-        fitting = [
-            part
-            for part in _proper_parts(level)
-            if fills_whole_levels(into, _without(counts, part), _one_less(most, irrep))
-        ]
-        if fitting:
-            yield irrep, fitting
+def _n_unpaired_beside(level: OpenLevel, alpha: Mapping[str, int], beta: Mapping[str, int]) -> int:
+    """Return the unpaired electrons that a reading leaves to other levels, at least."""
+    return sum(map(abs, _without(_without(alpha, level.alpha), _without(beta, level.beta)).values()))
 
 
-def _proper_parts(level: Mapping[str, int]) -> Iterator[dict[str, int]]:
-    for numbers in itertools.product(*(range(n + 1) for n in level.values())):
-        if 0 < sum(numbers) < sum(level.values()):
-            yield {name: n for name, n in zip(level, numbers, strict=True) if n}
+def _parts(level: Mapping[str, int], counts: Mapping[str, int]) -> list[dict[str, int]]:
+    """Return what a level may hold of the electrons of one spin, nothing and all of it included."""
+    ranges = [range(min(n, counts.get(name, 0)) + 1) for name, n in level.items()]
+    return [
+        {name: n for name, n in zip(level, numbers, strict=True) if n} for numbers in itertools.product(*ranges)
+    ]
 
 
 def _without(counts: Mapping[str, int], part: Mapping[str, int]) -> dict[str, int]:
