@@ -57,7 +57,7 @@ def _finding(facts: Facts, species: str, found: Unbound) -> Finding:
         evidence["attachment_energy_ev"] = found.attachment_ev
     return Finding(
         at="species.charge",
-        message=f"{species} does not hold all its electrons in the gas phase; change the charge or the environment",
+        message=f"{species} does not hold all its electrons in the gas phase; change charge or environment",
         why=found.why,
         confidence=found.confidence,
         evidence=evidence,

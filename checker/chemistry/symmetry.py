@@ -17,7 +17,14 @@ from checker.chemistry.axes import placements
 from checker.chemistry.bodies import Body, Floats, Ints, body_of
 from checker.chemistry.descent import abelian_subgroups, operations_of
 from checker.chemistry.fitting import Fit
-from checker.chemistry.frames import Placement, note_of, permutations_among, place, straightened
+from checker.chemistry.frames import (
+    LABELS_WITHOUT_AXES,
+    Placement,
+    note_of,
+    permutations_among,
+    place,
+    straightened,
+)
 from checker.chemistry.irreps import MAX_AXIS, common_groups, point_group
 from checker.chemistry.lines import CONTINUOUS, Line, line_through, place_on_line
 from checker.chemistry.point_groups import standard_operations
@@ -200,7 +207,8 @@ class Symmetry:
     def _placed(self, symbol: str, matrices: Floats, axes: str | None = None) -> Placement | None:
         assert isinstance(self._fit, Fit)
         if symbol == "C1":  # most geometries; nothing to look for
-            return _at_a_point(symbol, len(self.symmetrised))
+            identity = np.arange(len(self.symmetrised))[None]
+            return Placement(symbol, np.eye(3), LABELS_WITHOUT_AXES, standard_operations(symbol), identity)
         lookup = permutations_among(self._fit.operations, self._fit.permutations)
         found = placements(matrices, symbol)
         return place(
@@ -271,7 +279,7 @@ def _refuse_coincidence(body: Body, tolerance: float) -> None:
 
 
 def _at_a_point(symbol: str, n_atoms: int) -> Placement | None:
-    """Place any group on a free atom, or C1 on any body: the axes are those given."""
+    """Place any group on a free atom, whose axes are those given."""
     group = point_group(symbol)
     if group is None:
         return None

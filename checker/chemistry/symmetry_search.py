@@ -25,6 +25,9 @@ MOST_IMAGES = 2_000_000
 WORST_IN_REACH = 3.0
 """An operation fitted by least squares may be off by a little more than the 2 `reach` of the ideal one."""
 
+MOST_COMPARED_ATOMS = 60
+"""Up to here all pairs of atoms are compared in all their distances before the search proper."""
+
 _COMPARED_ELEMENTS = 4_000_000
 
 
@@ -69,11 +72,11 @@ def approximate_operations(body: Body, reach: float) -> Found:
         If the body has more operations than any group that has a name here.
 
     """
+    if _is_asymmetric(body, reach):
+        return _identity(len(body))
     pool, resembles = _pool(body, reach)
     reference = _reference_pair(body, pool, resembles, reach)
     allowed = _allowed_misfit(body, reference, reach)
-    if len(reference.images) == 1 and _is_lopsided(body, reference, allowed):
-        return _identity(len(body))
     matrices, handedness = _candidates(body, reference)
     if len(matrices) * len(body) > _COMPARED_ELEMENTS // 100:
         near = _worst(body, matrices, body.images(matrices, pool), pool) <= allowed
@@ -85,17 +88,19 @@ def approximate_operations(body: Body, reach: float) -> Found:
     return _sifted(body, matrices, handedness, allowed, WORST_IN_REACH * reach)
 
 
-def _is_lopsided(body: Body, reference: _Reference, allowed: float) -> bool:
-    """Tell whether reflection in the plane of the reference pair and the centre takes the body elsewhere.
+def _is_asymmetric(body: Body, reach: float) -> bool:
+    """Tell whether no two atoms can be equivalent and the body is not flat: no operation but the identity is left.
 
-    It is the one operation, but for the identity, that leaves both atoms in place. Under it the heights of each
-    kind of atom over the plane, in order, would have to be those below it.
+    Tried on small bodies only, as it compares all distances of all pairs. Where it is not told, the search tells.
     """
-    normal = np.cross(body.positions[reference.first], body.positions[reference.second])
-    heights = body.positions @ (normal / np.linalg.norm(normal))
-    above = heights[np.lexsort((heights, body.kinds))]
-    below = -heights[np.lexsort((-heights, body.kinds))]
-    return bool(np.abs(above - below).max() > allowed)
+    if len(body) > MOST_COMPARED_ATOMS:
+        return False
+    gaps = np.abs(body.environments[:, None, :] - body.environments[None, :, :]).max(axis=2)
+    n_resembling = np.count_nonzero(body.alike & (gaps <= 4.0 * reach + 1e-9))
+    if n_resembling > len(body):
+        return False
+    thickness = float(np.linalg.eigvalsh(body.positions.T @ body.positions)[0])
+    return thickness > 1.001 * len(body) * reach**2
 
 
 def _identity(n_atoms: int) -> Found:

@@ -47,7 +47,7 @@ def test_surroundings_hold_the_electrons(environment: str) -> None:
 def test_says_what_happens_and_the_ways_out() -> None:
     (finding,) = run_rule(RULE, job(rows(of("CH4")), charge=-1, multiplicity=2))
     assert finding.message == (
-        "CH4- does not hold all its electrons in the gas phase; change the charge or the environment"
+        "CH4- does not hold all its electrons in the gas phase; change charge or environment"
     )
     neutral, dissolved = finding.repairs
     assert neutral.edits == (Edit("species.charge", 0), Edit("species.multiplicity", 1))

@@ -271,3 +271,17 @@ def test_an_atom_close_to_the_centre_fixes_nothing() -> None:
 def test_a_small_outer_shell_and_a_large_inner_one() -> None:
     rows = spread("C", "Ih", 0.6, 1.9, 3.4) + spread("Au", "D2h", 0, 0, 9)
     assert find_symmetry(*moved(body(rows), 2)).group == "D2h"
+
+
+@pytest.mark.parametrize("scale", [0.001, 0.02, 0.1])
+def test_a_short_cut_to_no_symmetry_finds_what_the_search_finds(
+    scale: float, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """Shaken bodies, with and without the comparison of all pairs that may spare the search."""
+    rng = np.random.default_rng(5)
+    kinds, positions = MOLECULES["benzene"]
+    places = [positions + rng.normal(scale=scale, size=positions.shape) for _ in range(20)]
+    quick = [find_symmetry(kinds, shaken_places).group for shaken_places in places]
+    monkeypatch.setattr(symmetry_search, "MOST_COMPARED_ATOMS", 0)
+    assert quick == [find_symmetry(kinds, shaken_places).group for shaken_places in places]
+    assert ("C1" in quick) == (scale > 0.01)
