@@ -10,7 +10,7 @@ import typer
 
 from checker import __version__
 from checker.errors import HundsightError, UnreadableInput
-from checker.output import ReaderLeft
+from checker.output import NotWritten, ReaderLeft
 
 CLEAN, STOPPED, UNREADABLE, FAULT, INTERRUPTED = 0, 1, 2, 3, 130
 PROGRAM = "hundsight"
@@ -91,6 +91,9 @@ def run(argv: Sequence[str], stdin: BinaryIO | None = None) -> int:
     except ReaderLeft:
         _close_quietly()
         return INTERRUPTED
+    except NotWritten as failure:
+        _close_quietly()
+        return _complain(str(failure))
     except UnreadableInput as unreadable:
         return _complain(*map(str, unreadable.complaints))
     except HundsightError as known:
@@ -227,10 +230,10 @@ def explain(name: Name = None) -> int:
 
 
 def _complain(*sentences: str) -> int:
-    from checker.report.plain import plain
+    from checker.output import to_stderr
 
     for sentence in sentences:
-        print(f"{PROGRAM}: {plain(sentence)}", file=sys.stderr)
+        to_stderr(f"{PROGRAM}: {sentence}")
     return UNREADABLE
 
 
@@ -253,23 +256,22 @@ def _own_fault(fault: Exception) -> int:
     """Say that something of ours broke, and what to report; with HUNDSIGHT_TRACEBACK set, the whole way to it."""
     import traceback
 
+    from checker.output import to_stderr
+
     if os.environ.get("HUNDSIGHT_TRACEBACK"):
         traceback.print_exception(fault)
         return FAULT
     frame = traceback.extract_tb(fault.__traceback__)[-1]
     place = f"{os.path.basename(frame.filename)}, line {frame.lineno}"  # noqa: PTH119 - a name, not a path
-    print(
-        f"{PROGRAM}: this is a fault of {PROGRAM} {__version__}, not of your deck.\n"
-        f"{type(fault).__name__} in {place}: {fault}\n"
-        "Please report these lines together with the deck; HUNDSIGHT_TRACEBACK=1 shows the way to it.",
-        file=sys.stderr,
-    )
+    to_stderr(f"{PROGRAM}: this is a fault of {PROGRAM} {__version__}, not of your deck.")
+    to_stderr(f"{type(fault).__name__} in {place}: {fault}")
+    to_stderr("Please report these lines together with the deck; HUNDSIGHT_TRACEBACK=1 shows the way to it.")
     return FAULT
 
 
 def _close_quietly() -> None:
-    """Let nothing more be written to a pipe whose reader has gone, so that leaving is quiet too."""
+    """Let nothing more be written to where nothing can be written, so that leaving is quiet too."""
     try:
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
-    except (OSError, ValueError):
+    except (OSError, ValueError, AttributeError):
         return  # no stream of the system, such as a test's

@@ -16,8 +16,15 @@ from checker.report.plain import plain
 PLAIN_WIDTH = 80
 
 
+_NO_STDOUT = "standard output is closed, so there is nowhere to write; open it, or give --output FILE"
+
+
 class ReaderLeft(HundsightError):
     """The program that read our output through a pipe wants no more of it."""
+
+
+class NotWritten(HundsightError):
+    """Standard output takes nothing, with the reason."""
 
 
 def text_width() -> int:
@@ -46,15 +53,17 @@ def look_of_file(stop_at: Grade, *, quiet: bool) -> Look:
 
 def progress(n_files: int, *, quiet: bool) -> Progress:
     """Return the line of progress; it stays away unless standard error is a terminal that can take it back."""
-    shows = sys.stderr.isatty() and os.environ.get("TERM") != "dumb" and not quiet
+    shows = sys.stderr is not None and sys.stderr.isatty() and os.environ.get("TERM") != "dumb" and not quiet
     return Progress(sys.stderr if shows else None, n_files)
 
 
 def to_stdout(pieces: Iterable[str], progress: Progress | None = None) -> None:
     """Write pieces to standard output as they come; what its encoding lacks is written out as an escape.
 
-    Raises ReaderLeft where the other end of a pipe is closed.
+    Raises ReaderLeft where the other end of a pipe is closed, NotWritten where nothing can be written.
     """
+    if sys.stdout is None:
+        raise NotWritten(_NO_STDOUT)
     encoding = getattr(sys.stdout, "encoding", None) or "utf-8"
     same_screen = sys.stdout.isatty()
     for piece in pieces:
@@ -73,6 +82,9 @@ def _put(text: str, *, flush: bool = False) -> None:
             sys.stdout.flush()
     except BrokenPipeError:
         raise ReaderLeft from None
+    except OSError as error:
+        reason = (error.strerror or str(error)).lower()
+        raise NotWritten(f"standard output cannot be written: {reason}; the report is not complete") from None
 
 
 def to_file(file: str, pieces: Iterable[str], progress: Progress | None = None) -> None:
@@ -91,9 +103,12 @@ def to_file(file: str, pieces: Iterable[str], progress: Progress | None = None) 
 
 def _wants_colour() -> bool:
     """Tell whether colour is welcome: on a terminal, unless NO_COLOR (no-color.org) or TERM=dumb is set."""
-    return sys.stdout.isatty() and not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
+    if sys.stdout is None or not sys.stdout.isatty():
+        return False
+    return not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
 
 
 def to_stderr(sentence: str) -> None:
     """Write one sentence about the call, not about a deck, to standard error."""
-    sys.stderr.write(f"{plain(sentence)}\n")
+    if sys.stderr is not None:  # closed by the caller, who wants to hear nothing
+        sys.stderr.write(f"{plain(sentence)}\n")

@@ -252,6 +252,28 @@ class TestOutput:
 
         assert "--output no/such/folder/x: no such file or directory; give a file" in capsys.readouterr().err
 
+    @pytest.mark.skipif(not Path("/dev/full").exists(), reason="this system has no /dev/full")
+    @pytest.mark.parametrize(
+        ("redirection", "status", "said"),
+        [
+            pytest.param(">&-", 2, "standard output is closed, so there is nowhere to write", id="output-closed"),
+            pytest.param(">/dev/full", 2, "standard output cannot be written: no space left", id="disk-full"),
+            pytest.param(">/dev/null 2>&-", 0, "", id="errors-closed"),
+            pytest.param("--output out.txt >&-", 0, "", id="output-closed-but-not-needed"),
+        ],
+    )
+    def test_error_a_stream_that_takes_nothing(
+        self, redirection: str, status: int, said: str, monkeypatch: pytest.MonkeyPatch
+    ) -> None:
+        """It is the call's fault, not ours, and there is no traceback of the interpreter's own either."""
+        monkeypatch.setenv("PYTHONPATH", str(ROOT))
+        call = f'"{sys.executable}" -m checker check clear.deck.toml {redirection}'
+        ended = subprocess.run(["/bin/sh", "-c", call], capture_output=True, text=True, check=False)
+
+        assert ended.returncode == status, ended.stderr
+        assert said in ended.stderr
+        assert len(ended.stderr.splitlines()) == bool(said)
+
     def test_error_half_a_report_is_never_left(self, folder: Path, monkeypatch: pytest.MonkeyPatch) -> None:
         """What was there before stays, whatever happens on the way."""
         (folder / "report.txt").write_text("before")
