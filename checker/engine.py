@@ -3,8 +3,9 @@
 import datetime
 import json
 from collections import Counter
-from collections.abc import Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass, replace
+from typing import TypeVar
 
 from checker.deck import Deck, UnreadableDeck
 from checker.errors import Complaint, NotDerivable
@@ -25,6 +26,8 @@ from checker.registry import ENGINE_GRADES, Rule, RuleSet
 from checker.source import Places, Span
 
 FINGERPRINT_DIGITS = 6
+
+Book = TypeVar("Book")
 
 
 @dataclass(frozen=True, slots=True)
@@ -47,6 +50,10 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
                 not_judged.append(word)
             else:
                 spoken.append(word)
+    ledger = _book("electron books", lambda: facts.ledger, spoken)
+    symmetry = _book("symmetry", lambda: _symmetry(facts, deck), spoken)
+    basis = _book("basis", lambda: facts.basis_book, spoken)
+    expected = _book("expected state", lambda: facts.expected, spoken)
     placed = _place(spoken, deck.places)
     placed, lapsed = _accept(placed, deck, rules, today)
     findings = _number_repairs(_sorted([*placed, *lapsed], rules))
@@ -56,10 +63,10 @@ def judge(deck: Deck, rules: RuleSet, today: datetime.date) -> DeckReport:
         verdict=_verdict(findings),
         findings=findings,
         not_judged=tuple(dict.fromkeys(not_judged)),
-        ledger=facts.ledger,
-        symmetry=_symmetry(facts, deck),
-        basis=facts.basis_book,
-        expected=facts.expected,
+        ledger=ledger,
+        symmetry=symmetry,
+        basis=basis,
+        expected=expected,
         rule_failed=any(finding.rule == "rule-failed" for finding in findings),
         atoms_file=_atoms_file(deck) if any(finding.numbered for finding in findings) else None,
     )
@@ -87,7 +94,7 @@ def unreadable(deck: UnreadableDeck) -> DeckReport:
         message=first.message if not n_more else f"{first.message} (and {n_more} more)",
         why="Nothing is judged of a deck that cannot be read as a whole.",
         evidence={"complaints": [_complaint_record(complaint) for complaint in deck.complaints]},
-        subject="; ".join(complaint.message for complaint in deck.complaints),
+        subject="; ".join(sorted(complaint.message for complaint in deck.complaints)),
     )
     placed = PlacedFinding(
         rule="deck-unreadable",
@@ -134,6 +141,21 @@ def _rule_failed(rule: Rule, fault: Exception) -> Finding:
         why="This is a fault of the tool, not of the deck; the other rules have spoken.",
         evidence={"rule": rule.id, "fault": type(fault).__name__},
     )
+
+
+def _book(name: str, work_out: Callable[[], Book], spoken: list[_Spoken]) -> Book | None:
+    """Return a book of the report; a crash on the way to it becomes a finding, so that other decks are judged."""
+    try:
+        return work_out()
+    except Exception as fault:
+        finding = Finding(
+            at="",
+            message=f"the {name} of this deck could not be worked out ({type(fault).__name__}: {fault})",
+            why="This is a fault of the tool, not of the deck; the rules have spoken.",
+            evidence={"book": name, "fault": type(fault).__name__},
+        )
+        spoken.append(_Spoken("rule-failed", ENGINE_GRADES["rule-failed"], finding))
+        return None
 
 
 def _place(spoken: Iterable[_Spoken], places: Places) -> list[PlacedFinding]:

@@ -6,7 +6,9 @@ from collections.abc import Iterator
 import pytest
 
 from builders import TODAY, job, report
-from checker.errors import NotDerivable
+from checker import engine
+from checker.deck import UnreadableDeck
+from checker.errors import Complaint, NotDerivable
 from checker.facts import Facts
 from checker.findings import DeckReport, Edit, Finding, Grade, NotJudged, Repair, Verdict
 from checker.registry import Rule
@@ -187,3 +189,33 @@ class TestAcceptance:
         told = judged(self.rule, accepted=[accepting("toy"), accepting("toy", finding=self.marks()[0])])
 
         assert {f.rule for f in told.findings} == {"toy"}
+
+
+@pytest.mark.parametrize(
+    ("book", "name"), [("basis_book", "basis"), ("symmetry_book", "symmetry"), ("expected", "expected state")]
+)
+def test_a_book_that_crashes_is_a_finding_and_the_rest_is_reported(
+    book: str, name: str, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    def crash(_facts: Facts) -> None:
+        raise ZeroDivisionError("by zero")
+
+    monkeypatch.setattr(Facts, book, property(crash))
+    told = judged(saying("toy", Grade.NOTE, finding()))
+
+    assert told.rule_failed
+    assert {f.rule for f in told.findings} == {"rule-failed", "toy"}
+    assert (
+        told.findings[0].finding.message
+        == f"the {name} of this deck could not be worked out (ZeroDivisionError: by zero)"
+    )
+    assert told.ledger is not None
+
+
+def test_the_fingerprint_of_an_unreadable_deck_does_not_depend_on_the_order_of_its_complaints() -> None:
+    one, two = Complaint("one fault", "a", 1), Complaint("another fault", "a", 2)
+    marks = {
+        engine.unreadable(UnreadableDeck("a", order)).findings[0].fingerprint for order in ((one, two), (two, one))
+    }
+
+    assert len(marks) == 1
