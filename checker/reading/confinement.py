@@ -110,7 +110,8 @@ def open_geometry(written: str, home: Home) -> BinaryIO:
     try:
         stream = open_regular(real, written)
     except UnreadableInput as unreadable:
-        raise _refusal(written, unreadable.complaints[0].message) from None
+        message = unreadable.complaints[0].message.partition("; to pipe")[0]  # which holds for decks only
+        raise _refusal(written, message) from None
     if os.path.realpath(path) != real or not _is_open(stream, real):
         stream.close()
         raise _refusal(written, "the path changed while the file was being opened; check again")

@@ -23,6 +23,7 @@ DEEPEST_SHOWN = 100
 _BRACKET = re.compile(r"[\[\]{}]")
 _PLACE = re.compile(r" \(at (?:line (\d+), column (\d+)|end of document)\)$")
 _LONG_INTEGER = re.compile(r"[0-9][0-9_]{4299,}")
+_FORTRAN = re.compile(r"(?<![\w.\"'])[+-]?[0-9]{1,30}(?:\.[0-9]{0,30})?[dD][+-]?[0-9]{1,4}(?![\w.])")
 _TWICE = ("Cannot overwrite", "Cannot declare", "Duplicate inline", "Cannot mutate", "Cannot redefine")
 
 # what tomllib says, and what that means for the author of a deck
@@ -107,6 +108,9 @@ def _refuse_toml(places: DeckPlaces, said: str) -> NoReturn:
         _refuse_twice(places, line, column)
     if said.startswith("Invalid value"):
         _refuse(places, _no_toml_value(places.text, line, column), line, column)
+    fortran = _fortran_number(places.text, line, column)
+    if fortran:
+        _refuse(places, fortran, line, column)
     if said.startswith(("Illegal character", "Found invalid character")):
         _refuse(places, _stray_character(said), line, column)
     _refuse(places, _sentence(said, _TOML_SENTENCES, "TOML"), line, column)
@@ -122,6 +126,16 @@ def _no_toml_value(text: str, line: int, column: int) -> str:
     )
 
 
+def _fortran_number(text: str, line: int, column: int) -> str | None:
+    """Return what to write for a number with the exponent letter of Fortran, where reading stopped at that."""
+    written = text.replace("\r\n", "\n").split("\n")[line - 1]
+    number = next((n for n in _FORTRAN.finditer(written) if n.start() < column <= n.end() + 1), None)
+    if number is None:
+        return None
+    in_e = re.sub("[dD]", "e", number[0].replace(".d", ".0d").replace(".D", ".0d"))
+    return f"{quoted(number[0])} has the exponent letter of Fortran, which only XYZ files may have; write {in_e}"
+
+
 def _stray_character(said: str) -> str:
     written = re.search(r"character ('.*?'|\".*?\") \(", said)
     if written and written[1] == r"'\n'":
@@ -135,7 +149,8 @@ def _json(places: DeckPlaces) -> Any:
         found = json.loads(places.text, object_pairs_hook=_once, parse_constant=_no_constant)
     except json.JSONDecodeError as error:
         place = place_in(places.text, error.pos)
-        _refuse(places, _sentence(error.msg, _JSON_SENTENCES, "JSON"), *place)
+        fortran = _fortran_number(places.text, *place)
+        _refuse(places, fortran or _sentence(error.msg, _JSON_SENTENCES, "JSON"), *place)
     except _Twice:
         _refuse_twice(places, 1, 1)
     except _NoConstant as constant:

@@ -220,7 +220,7 @@ class TestGeometryFile:
             ("a.toml", ", which does not end in .xyz or .extxyz; name an XYZ file"),
             ("missing.xyz", ": there is no such file; check the path"),
             ("folder.xyz", ": this is a folder, but must be a file"),
-            ("pipe.xyz", ": this is a named pipe, but must be a file; to pipe a deck in, give - as its name"),
+            ("pipe.xyz", ": this is a named pipe, but must be a file"),
             ("dangling.xyz", ": there is no such file; check the path"),
         ],
     )  # fmt: skip

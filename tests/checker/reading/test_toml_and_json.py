@@ -7,6 +7,7 @@ from checker.reading.positions import place_in
 
 NOT_A_VALUE = "is no value; put text in quotes, write numbers plainly, and true or false in lower case"
 UNCLOSED_LINE = "a text in quotes is not closed on its line; put the same quote at its end"
+FORTRAN = "has the exponent letter of Fortran, which only XYZ files may have; write"
 NEEDS_A_LINE = "something follows the value; each key needs a line of its own, and text needs quotes"
 NO_EQUALS = "a key stands here without = and a value; write key = value, or # before a comment"
 TOO_DEEP = "lists or tables are nested too deep to be read; a deck needs no more than four levels"
@@ -18,6 +19,8 @@ KEY_MISSING = "a key in double quotes is missing here; no comma may stand after 
     ("text", "line", "column", "message"),
     [
         pytest.param("x = CCSD(T)", 1, 5, f"'CCSD(T)' {NOT_A_VALUE}", id="text-without-quotes"),
+        pytest.param("x = 1.0D+00", 1, 8, f"'1.0D+00' {FORTRAN} 1.0e+00", id="fortran-exponent"),
+        pytest.param("x = [-1.d0]", 1, 8, f"'-1.d0' {FORTRAN} -1.0e0", id="fortran-exponent-in-a-list"),
         pytest.param("x = True", 1, 5, f"'True' {NOT_A_VALUE}", id="capital-true"),
         pytest.param(
             "x =",
