@@ -19,6 +19,7 @@ from checker.report.plain import counted, evidence, grade_counts, plain, signed
 
 MOST_FINDINGS = 40
 LONGEST_EVIDENCE = 400
+LONGEST_TITLE = 200
 INDENT = "    "
 EXACT_ANGSTROM = 0.0001
 """Smaller deviations from a point group are not told apart; coordinates have no more digits that count."""
@@ -51,7 +52,7 @@ def heading(report: DeckReport, page: Page) -> Iterator[str]:
     label = f"{page.mark(report.verdict)} {report.verdict.upper()}"
     yield page.line((label, verdict_style(report.verdict)), (plain(report.deck), "name"))
     if report.title:
-        yield from page.entry("", plain(report.title))
+        yield from page.entry("", _shortened(plain(report.title), LONGEST_TITLE))
     count = _count(report)
     if count:
         yield from page.entry("", count)
@@ -89,9 +90,10 @@ def _finding(placed: PlacedFinding, report: DeckReport, page: Page) -> Iterator[
     said = placed.finding
     style = grade_style(placed.grade)
     label = f"{page.glyph(placed.grade.word)} {placed.grade.word}"
-    yield from page.entry(label, plain(said.message), style if placed.grade is not Grade.HALT else "name", style)
+    message = _shortened(plain(said.message))
+    yield from page.entry(label, message, style if placed.grade is not Grade.HALT else "name", style)
     yield from page.entry("place", _place(placed))
-    yield from page.entry("ground", plain(said.why))
+    yield from page.entry("ground", _shortened(plain(said.why)))
     if said.evidence:
         yield from page.entry("evidence", _shortened(evidence(said.evidence.items())))
     sure = f", confidence {said.confidence:.2g}" if said.confidence < 1 else ""
@@ -133,8 +135,8 @@ def _spot(file: Json, line: Json, column: Json) -> str:
     return ":".join(plain(str(part)) for part in (file, line, column) if part is not None)
 
 
-def _shortened(text: str) -> str:
-    return text if len(text) <= LONGEST_EVIDENCE else f"{text[:LONGEST_EVIDENCE]} ... (--format json has it all)"
+def _shortened(text: str, longest: int = LONGEST_EVIDENCE) -> str:
+    return text if len(text) <= longest else f"{text[:longest]} ... (--format json has it all)"
 
 
 def _percent(weight: float) -> str:

@@ -44,13 +44,27 @@ class Page:
         symbol, ascii_form = _GLYPHS[name]
         return symbol if self._look.symbols else ascii_form
 
+    @property
+    def text_width(self) -> int:
+        """The characters that a line has beside its label."""
+        return self._text_width
+
     def mark(self, verdict: Verdict) -> str:
         """Return the box for a verdict."""
         return self.glyph(_VERDICT_GLYPHS[verdict])
 
-    def entry(self, label: str, text: str, style: str = "", label_style: str = "label") -> Iterator[str]:
+    def entry(
+        self, label: str, text: str, style: str = "", label_style: str = "label", indent: str = ""
+    ) -> Iterator[str]:
         """Yield a label with its text beside it, wrapped; words that are too long, such as paths, stay whole."""
-        wrapped = textwrap.wrap(text, self._text_width, break_long_words=False, break_on_hyphens=False) or [""]
+        wrapped = textwrap.wrap(
+            text,
+            self._text_width,
+            initial_indent=indent,
+            subsequent_indent=indent,
+            break_long_words=False,
+            break_on_hyphens=False,
+        ) or [""]
         yield self.line((label, label_style), (wrapped[0], style))
         for rest in wrapped[1:]:
             yield self.line(("", ""), (rest, style))

@@ -8,7 +8,7 @@ from itertools import chain, islice
 from checker.findings import DeckReport, Grade, Verdict
 from checker.report import Look
 from checker.report.card import card, findings, heading
-from checker.report.layout import Page, verdict_style
+from checker.report.layout import Page, Segment, verdict_style
 from checker.report.plain import VERDICT_ORDER, counted, plain
 
 MOST_DETAILS = 10  # decks shown in detail after the list of several
@@ -85,7 +85,7 @@ def _several(reports: Iterable[DeckReport], page: Page) -> Iterator[str]:
         details.note(run)
         lines = _next_line(run, lines)
         if lines.n <= MOST_LINES_A_FILE:
-            yield _run_line(run, page)
+            yield from _run_lines(run, page)
         elif lines.n == MOST_LINES_A_FILE + 1:
             yield from page.entry("", f"further frames of {plain(lines.file)} are counted, not listed")
     if details.n_decks:
@@ -126,20 +126,38 @@ def _spoken(report: DeckReport) -> list[str]:
     return list(dict.fromkeys(finding.rule for finding in report.findings if finding.accepted is None))
 
 
+def _run_lines(run: _Run, page: Page) -> Iterator[str]:
+    """Yield the line of a run, with its rules below the name where they do not fit beside it."""
+    name, rules = _name(run), ", ".join(_rules(run))
+    if not rules or max(len(name), NAME_WIDTH) + len(rules) + 2 <= page.text_width:
+        yield _run_line(run, page)
+    else:
+        yield page.line(_label(run, page), (name, ""))
+        yield from page.entry("", rules, indent="  ")
+
+
 def _run_line(run: _Run, page: Page) -> str:
+    name, rules = _name(run), ", ".join(_rules(run))
+    return page.line(_label(run, page), (f"{name:<{NAME_WIDTH}}  {rules}", ""))
+
+
+def _label(run: _Run, page: Page) -> Segment:
+    verdict = run.first.verdict
+    return f"{page.mark(verdict)} {verdict}", verdict_style(verdict) if verdict is not Verdict.CLEAR else ""
+
+
+def _name(run: _Run) -> str:
+    name = plain(run.first.deck)
+    return name if run.n == 1 else f"{name} to #{run.last.deck.rpartition('#')[2]}, {run.n} frames"
+
+
+def _rules(run: _Run) -> list[str]:
+    """Return what a run's line says of its findings."""
     report = run.first
-    name = plain(report.deck)
-    if run.n > 1:
-        name += f" to #{run.last.deck.rpartition('#')[2]}, {run.n} frames"
-    rules = _spoken(report) if report.verdict is not Verdict.UNREADABLE else [_first_complaint(report)]
+    if report.verdict is Verdict.UNREADABLE:
+        return [_first_complaint(report)]
     n_accepted = sum(finding.accepted is not None for finding in report.findings)
-    if n_accepted and run.n == 1:
-        rules.append(f"{n_accepted} accepted")
-    label = f"{page.mark(report.verdict)} {report.verdict}"
-    style = verdict_style(report.verdict) if report.verdict is not Verdict.CLEAR else ""
-    return page.line(
-        (label, style), (f"{name:<{NAME_WIDTH}}" if rules else name, ""), (f"  {', '.join(rules)}", "")
-    )
+    return _spoken(report) + ([f"{n_accepted} accepted"] if n_accepted and run.n == 1 else [])
 
 
 def _first_complaint(report: DeckReport) -> str:
@@ -156,12 +174,12 @@ def _detailed(details: _Details, page: Page) -> Iterator[str]:
         if run.n > 1:
             yield from page.entry("", f"the first of {run.n} frames that say the same")
         yield from findings(run.first, page, MOST_FINDINGS_EACH, Grade.DOUBT)
+    yield "\n"
+    yield from page.entry("next", "check a deck by itself to see all there is to say of it, or to --apply N")
     n_left = details.n_decks - sum(run.n for run in worst)
     if n_left:
-        yield "\n"
-        yield from page.entry(
-            "", f"{counted(n_left, 'more deck')} not clear; check them one by one, or --format json"
-        )
+        more = f"{counted(n_left, 'more deck')} not clear; --format json has them all"
+        yield from page.entry("", more)
 
 
 def _quiet(reports: Iterable[DeckReport], page: Page, stop_at: Grade) -> Iterator[str]:

@@ -94,3 +94,26 @@ def test_quiet_shows_what_stops(stop_at: Grade, n_lines: int) -> None:
 def test_no_decks_are_said_to_be_none() -> None:
     """Silence would look like success."""
     assert lines() == ["", "0 decks: nothing to judge"]
+
+
+def test_rules_that_do_not_fit_beside_a_name_stand_below_it() -> None:
+    """No line of the list is broken by the terminal."""
+    rule = "a-rule-of-a-long-name-indeed"
+    shown = lines(made("a.deck.toml", Grade.HALT, rule), made("b" * 50, Grade.HALT, rule))
+
+    assert shown[:4] == [
+        "\u25a0 halted      a.deck.toml",
+        f"{'':16}{rule}",
+        f"\u25a0 halted      {'b' * 50}",
+        f"{'':16}{rule}",
+    ]
+
+
+def test_a_title_and_a_message_without_end_are_cut_short() -> None:
+    """The screen stays readable; the JSON report has them whole."""
+    said = Finding(at="species.charge", message="found " * 2000, why="ground")
+    judged = report(job("H", multiplicity=2), Rule("toy", Grade.NOTE, lambda facts: iter([said])))
+    shown = lines(dataclasses.replace(judged, title="x" * 100_000))
+
+    assert sum(map(len, shown)) < 2000
+    assert sum("--format json has it all" in line for line in shown) == 2
