@@ -43,7 +43,7 @@ def _judge_stated(facts: Facts, symbol: str, replaced: int) -> Iterator[Finding]
     z = number_of(symbol)
     assert z is not None, "the form of the deck allows elements only"
     if z not in facts.numbers:
-        yield _absent(symbol, replaced)
+        yield _absent(facts, symbol, replaced)
     elif not 0 <= replaced < z:
         yield _impossible(symbol, z, replaced)
     elif (of_set := _named_count(facts, symbol, z)) is not None:
@@ -63,14 +63,18 @@ def _named_count(facts: Facts, symbol: str, z: int) -> tuple[str, int] | None:
     return None if name is None or known is None else (name, known)
 
 
-def _absent(symbol: str, replaced: int) -> Finding:
+def _absent(facts: Facts, symbol: str, replaced: int) -> Finding:
     key = f"core_potential.replaced.{symbol}"
+    potential = facts.job.core_potential
+    # a table of core potentials with neither a name nor a count is no deck
+    is_last = potential is not None and potential.name is None and len(potential.replaced) == 1
+    gone = Edit("core_potential" if is_last else key, None)
     return Finding(
         at=key,
         message=f"{key} = {replaced}, and the geometry has no {symbol}",
         why="The count is spent on no atom: either the element or the geometry is another one than meant.",
         evidence={"element": symbol, "replaced": replaced},
-        repairs=(Repair(f"take {symbol} out of the core potentials", (Edit(key, None),), 0.6),),
+        repairs=(Repair(f"take {symbol} out of the core potentials", (gone,), 0.6),),
     )
 
 

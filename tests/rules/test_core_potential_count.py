@@ -75,9 +75,14 @@ def test_a_count_as_large_as_the_atom_leaves_nothing() -> None:
 
 
 def test_an_absent_element_is_taken_out() -> None:
-    (finding,) = spoken(METHYL_IODIDE, {"replaced": {"Br": 28}})
+    (finding,) = spoken(METHYL_IODIDE, {"replaced": {"Br": 28, "I": 28}})
     assert finding.message == "core_potential.replaced.Br = 28, and the geometry has no Br"
     assert finding.repairs[0].edits == (Edit("core_potential.replaced.Br", None),)
+
+
+def test_with_the_last_count_its_table_goes_which_could_not_be_read_empty() -> None:
+    (finding,) = spoken(METHYL_IODIDE, {"replaced": {"Br": 28}})
+    assert finding.repairs[0].edits == (Edit("core_potential", None),)
 
 
 def test_a_named_set_speaks_against_the_stated_count() -> None:
