@@ -1,4 +1,4 @@
-"""Every repair that the rules on occupations and symmetry offer for the sample decks is written and judged anew."""
+"""Every repair that the rules on occupations and symmetry offer for the sample decks is written and judged."""
 
 import re
 import shutil
