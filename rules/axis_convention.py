@@ -5,7 +5,8 @@ state has other names. The rule speaks where the stated occupation cannot be a g
 orbitals in an irrep than the cores and valence shells of the atoms have there, or degenerate partners filled
 unevenly) and is a good one when the axes are called otherwise. It gives the renamed occupation and the turned
 geometry. Choices of axes that the molecule itself makes equal, x and y of a linear one, are the same state and
-never flagged. Not judged where the occupation or the group is not settled.
+never flagged, nor is a level filled in part that has the same partners in the other axes. Not judged
+where the occupation or the group is not settled.
 
 Passes: N2 along z in D2h with Ag = 3, B1u = 2, B2u = 1, B3u = 1.
 Speaks: the same occupation with N2 along x: there it is B3u = 2 and B1u = 1.

@@ -205,7 +205,9 @@ def _formula(books: tuple[ElementBook, ...]) -> str:
 
 def _symmetry(book: SymmetryBook) -> str:
     """Return the group and how exact it is, the group above, and the one of the isotopes."""
-    own = f"{book.point_group} within {max(book.deviation_angstrom, EXACT_ANGSTROM):.4f} angstrom"
+    own = book.point_group
+    if own != "C1":
+        own += f" within {max(book.deviation_angstrom, EXACT_ANGSTROM):.4f} angstrom"
     if book.next_higher is not None:
         group, deviation = book.next_higher
         own += f", next above it {group} within {deviation:.4f}"
