@@ -19,6 +19,7 @@ INTEGER_TOO_LONG = "a whole number has too many digits to be read; the keys of a
 NOT_A_TABLE = "a JSON deck is an object of tables, so it must begin with { and end with }"
 
 DEEPEST_SHOWN = 100
+LONGEST_NUMBER = 70
 
 _BRACKET = re.compile(r"[\[\]{}]")
 _PLACE = re.compile(r" \(at (?:line (\d+), column (\d+)|end of document)\)$")
@@ -108,7 +109,7 @@ def _refuse_toml(places: DeckPlaces, said: str) -> NoReturn:
         _refuse_twice(places, line, column)
     if said.startswith("Invalid value"):
         _refuse(places, _no_toml_value(places.text, line, column), line, column)
-    fortran = _fortran_number(places.text, line, column)
+    fortran = _fortran_number(_line(places.text, line), column)
     if fortran:
         _refuse(places, fortran, line, column)
     if said.startswith(("Illegal character", "Found invalid character")):
@@ -116,8 +117,14 @@ def _refuse_toml(places: DeckPlaces, said: str) -> NoReturn:
     _refuse(places, _sentence(said, _TOML_SENTENCES, "TOML"), line, column)
 
 
+def _line(text: str, line: int) -> str:
+    """Return a line as tomllib counts them, which is not by a lone CR; nothing where it is beyond the last."""
+    lines = text.replace("\r\n", "\n").split("\n")
+    return lines[line - 1] if line <= len(lines) else ""
+
+
 def _no_toml_value(text: str, line: int, column: int) -> str:
-    rest = text.replace("\r\n", "\n").split("\n")[line - 1][column - 1 :]
+    rest = _line(text, line)[column - 1 :]
     word = re.split(r"[\s,#\]}]", rest, maxsplit=1)[0]
     if not word:
         return "a value is missing here; write a number, true, false, a list, or text in quotes"
@@ -126,10 +133,12 @@ def _no_toml_value(text: str, line: int, column: int) -> str:
     )
 
 
-def _fortran_number(text: str, line: int, column: int) -> str | None:
-    """Return what to write for a number with the exponent letter of Fortran, where reading stopped at that."""
-    written = text.replace("\r\n", "\n").split("\n")[line - 1]
-    number = next((n for n in _FORTRAN.finditer(written) if n.start() < column <= n.end() + 1), None)
+def _fortran_number(text: str, column: int) -> str | None:
+    """Return what to write for a number with the exponent letter of Fortran, where reading stopped at that.
+
+    `column`, from 1, is where it stopped.
+    """
+    number = next((n for n in _FORTRAN.finditer(text) if n.start() < column <= n.end() + 1), None)
     if number is None:
         return None
     in_e = re.sub("[dD]", "e", number[0].replace(".d", ".0d").replace(".D", ".0d"))
@@ -149,7 +158,9 @@ def _json(places: DeckPlaces) -> Any:
         found = json.loads(places.text, object_pairs_hook=_once, parse_constant=_no_constant)
     except json.JSONDecodeError as error:
         place = place_in(places.text, error.pos)
-        fortran = _fortran_number(places.text, *place)
+        before = max(error.pos - LONGEST_NUMBER, 0)
+        near = places.text[before : error.pos + LONGEST_NUMBER]
+        fortran = _fortran_number(near, error.pos - before + 1)
         _refuse(places, fortran or _sentence(error.msg, _JSON_SENTENCES, "JSON"), *place)
     except _Twice:
         _refuse_twice(places, 1, 1)

@@ -7,6 +7,9 @@ from checker.reading.positions import place_in
 
 NOT_A_VALUE = "is no value; put text in quotes, write numbers plainly, and true or false in lower case"
 UNCLOSED_LINE = "a text in quotes is not closed on its line; put the same quote at its end"
+NO_VALUE_IN_JSON = (
+    "a value is missing here; write a number, true, false, null, a list, an object or text in double quotes"
+)
 FORTRAN = "has the exponent letter of Fortran, which only XYZ files may have; write"
 NEEDS_A_LINE = "something follows the value; each key needs a line of its own, and text needs quotes"
 NO_EQUALS = "a key stands here without = and a value; write key = value, or # before a comment"
@@ -99,6 +102,8 @@ def test_error_in_toml(text: str, line: int, column: int, message: str | None) -
         ),
         pytest.param('{"a": ' + "9" * 5_000 + "}", 1, 7, TOO_MANY_DIGITS, id="5000-digits"),
         pytest.param('{"a": ' + "[" * 200_000, 1, 106, TOO_DEEP, id="200000-brackets"),
+        pytest.param('{"a": [0,\r1.5D-3]}', 2, 4, f"'1.5D-3' {FORTRAN} 1.5e-3", id="fortran-exponent"),
+        pytest.param("\r\x01", 2, 1, NO_VALUE_IN_JSON, id="lone-carriage-return"),
         pytest.param('{"a" 1}', 1, 6, "a colon is missing between key and value before this place", id="no-colon"),
         pytest.param(
             '{"a": 1} x',
