@@ -174,12 +174,20 @@ def _detailed(details: _Details, page: Page) -> Iterator[str]:
         if run.n > 1:
             yield from page.entry("", f"the first of {run.n} frames that say the same")
         yield from findings(run.first, page, MOST_FINDINGS_EACH, Grade.DOUBT)
-    yield "\n"
-    yield from page.entry("next", "check a deck by itself to see all there is to say of it, or to --apply N")
-    n_left = details.n_decks - sum(run.n for run in worst)
+    yield from _what_next(worst, details.n_decks - sum(run.n for run in worst), page)
+
+
+def _what_next(worst: list[_Run], n_left: int, page: Page) -> Iterator[str]:
+    """Yield what to do after a list, where there is more to see or to mend than it shows."""
+    has_findings = any(run.first.verdict is not Verdict.UNREADABLE for run in worst)
+    if has_findings or n_left:
+        yield "\n"
+    if has_findings:
+        yield from page.entry("next", "check a deck by itself to see all there is to say of it, or to --apply N")
     if n_left:
-        more = f"{counted(n_left, 'more deck')} not clear; --format json has them all"
-        yield from page.entry("", more)
+        yield from page.entry(
+            "" if has_findings else "next", f"{counted(n_left, 'more deck')} not clear; --format json has them all"
+        )
 
 
 def _quiet(reports: Iterable[DeckReport], page: Page, stop_at: Grade) -> Iterator[str]:
