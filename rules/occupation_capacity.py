@@ -21,8 +21,8 @@ def judge(facts: Facts) -> Iterator[Finding]:
     for key, electrons in _tables(facts):
         functions = facts.irreps.functions
         for name, n in electrons.items():
-            if n > functions[name]:
-                yield _too_many(facts, key, name, n, functions[name])
+            if n > functions.get(name, 0):
+                yield _too_many(facts, key, name, n, functions.get(name, 0))
 
 
 def _tables(facts: Facts) -> Iterator[tuple[str, dict[str, int]]]:

@@ -8,6 +8,7 @@ Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., ch. 9 (fro
 """
 
 import itertools
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 
@@ -22,6 +23,9 @@ HIGHEST_OCCUPIED = 3
 
 MOST_READINGS = 4
 """So many readings of an occupation are given, the likeliest ones."""
+
+MOST_TRIED = 600
+"""Sets of partners; a search that would need more is given up."""
 
 MOST_PARTNERS = 4
 """Partners are sought among so many further states at most; a state of Ih has four partners."""
@@ -249,9 +253,17 @@ def missing_partners(into: Correlation, roots: Mapping[str, int]) -> tuple[dict[
     """
     if possible_levels(into, roots, limit=1):
         return ()
-    names = list(dict.fromkeys(name for row in into.values() for name in row))
-    largest = max(sum(row.values()) for row in into.values()) - 1
-    for n_more in range(1, min(largest, MOST_PARTNERS) + 1):
+    near = [
+        row
+        for row in into.values()
+        if 1 < sum(row.values()) <= MOST_PARTNERS + 1 and any(roots.get(name, 0) for name in row)
+    ]
+    within = {name for row in near for name in row}
+    names = [name for name in dict.fromkeys(name for row in into.values() for name in row) if name in within]
+    largest = max((sum(row.values()) for row in near), default=1) - 1
+    for n_more in range(1, largest + 1):
+        if math.comb(len(names) + n_more - 1, n_more) > MOST_TRIED:
+            break
         found = []
         for chosen in itertools.combinations_with_replacement(names, n_more):
             added = {name: chosen.count(name) for name in dict.fromkeys(chosen)}

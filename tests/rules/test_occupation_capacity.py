@@ -83,3 +83,10 @@ def test_says_why_it_does_not_judge(group: str | None, basis: str | None, becaus
 
 def test_silent_without_occupations() -> None:
     assert run_rule(RULE, job(WATER, 0, 1, symmetry={"point_group": "C2v"})) == []
+
+
+def test_an_irrep_of_a_linear_molecule_that_the_basis_does_not_reach() -> None:
+    symmetry, basis = {"point_group": "D∞h"}, {"name": "STO-3G"}
+    occupations = {"paired": {"Σg+": 3, "Σu+": 2, "Πu": 1, "Γg": 1}}
+    (found,) = run_rule(RULE, job("N N", 0, 1, symmetry=symmetry, occupations=occupations, basis=basis))
+    assert found.message == "2 orbitals of Γg are occupied in D∞h, and STO-3G has no functions of it"

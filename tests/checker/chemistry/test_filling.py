@@ -2,7 +2,7 @@
 
 import pytest
 
-from checker.chemistry.descent import abelian_correlation, abelian_subgroups
+from checker.chemistry.descent import abelian_correlation, abelian_subgroups, correlation
 from checker.chemistry.filling import (
     OpenLevel,
     electron_correlation,
@@ -173,3 +173,10 @@ def test_partners_of_degenerate_states(
     group: str, subgroup: str, roots: dict[str, int], missing: tuple[dict[str, int], ...]
 ) -> None:
     assert missing_partners(abelian_correlation(group, subgroup), roots) == missing
+
+
+def test_a_search_for_partners_among_very_many_irreps_is_given_up() -> None:
+    """An atom in S58 has sixty irreps; four partners of them would be half a million sets."""
+    into = correlation("Kh", "S58")
+    assert missing_partners(into, {"E7g": 2, "E20u": 1}) == ()
+    assert missing_partners(into, {"E1u": 1}) == ({"Au": 1},)
