@@ -192,7 +192,9 @@ def _accept(
         else:
             matched = [_covers(acceptance, finding) for finding in placed]
             if not any(matched):
-                lapsed.append(_lapse(at, acceptance, "no finding needs it any more"))
+                others = any(finding.rule == acceptance.rule for finding in placed)
+                because = "its finding is another one now" if others else "no finding needs it any more"
+                lapsed.append(_lapse(at, acceptance, because))
             placed = [
                 _accepted(finding, acceptance) if hit else finding
                 for finding, hit in zip(placed, matched, strict=True)

@@ -68,14 +68,15 @@ def _beyond_valence(facts: Facts, multiplicity: int) -> Iterator[Finding]:
     if _is_known_atom(facts):
         return
     numbers = facts.real_numbers.tolist()
-    most = most_unpaired(numbers, facts.charge)
-    if most is not None and multiplicity - 1 > most:
-        yield _doubt(facts, most, "the valence shells of the atoms hold", 0.9)
-        return
+    in_shells = most_unpaired(numbers, facts.charge)
     if len(numbers) > 1 and NON_METALS.issuperset(facts.elements):
         most = most_unpaired(numbers, facts.charge, count_bonds(facts.valence.bonds))
-        if most is not None and multiplicity - 1 > most:
-            yield _doubt(facts, most, "the molecule holds without breaking a bond", 0.8)
+        holds, confidence = "the molecule holds without breaking a bond", 0.8
+    else:
+        most, holds, confidence = in_shells, "the valence shells of the atoms hold", 0.9
+    if most is not None and multiplicity - 1 > most:
+        beyond_all = in_shells is not None and multiplicity - 1 > in_shells
+        yield _doubt(facts, most, holds, 0.9 if beyond_all else confidence)
 
 
 def _is_known_atom(facts: Facts) -> bool:

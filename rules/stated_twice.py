@@ -22,6 +22,8 @@ from checker.findings import Edit, Finding, Grade, Repair
 from checker.model import Fragment
 from checker.registry import Rule
 
+MOST_NAMED = 12
+
 
 def judge(facts: Facts) -> Iterator[Finding]:
     """Compare the deck with what is said beside it, and the species with its fragments."""
@@ -127,7 +129,8 @@ def _spin_repairs(facts: Facts, spins: list[int], multiplicity: int) -> Iterator
 
 
 def _sum_of(numbers: list[int]) -> str:
-    return " ".join(f"{number:+d}" for number in numbers)
+    more = f" and {len(numbers) - MOST_NAMED} more" if len(numbers) > MOST_NAMED else ""
+    return " ".join(f"{number:+d}" for number in numbers[:MOST_NAMED]) + more
 
 
 RULE = Rule("stated-twice", Grade.DOUBT, judge)

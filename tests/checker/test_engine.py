@@ -174,7 +174,7 @@ class TestAcceptance:
         ("acceptance", "because"),
         [
             pytest.param(accepting("quiet"), "no finding needs it any more", id="rule-silent"),
-            pytest.param(accepting("toy", finding="000000"), "no finding needs it any more", id="other-finding"),
+            pytest.param(accepting("toy", finding="000000"), "its finding is another one now", id="other-finding"),
             pytest.param(accepting("nonesuch"), "no rule has that name", id="unknown-rule"),
         ],
     )
