@@ -1,9 +1,15 @@
 """Named molecules with their published point groups, built by hand.
 
 Sources of the groups: C, F. A. Cotton, Chemical Applications of Group Theory, 3rd ed. (1990), chapter 3;
-H, G. Herzberg, Electronic Spectra of Polyatomic Molecules (1966); both from memory. P: common practice, no source.
+H, G. Herzberg, Electronic Spectra of Polyatomic Molecules (1966); F, P. W. Fowler, D. E. Manolopoulos, An Atlas of
+Fullerenes (1995); S, H. S. M. Coxeter, Regular Polytopes, 3rd ed. (1973); all from memory. P: common practice, no
+source.
 """
 
+from itertools import permutations, product
+
+import numpy as np
+from scipy.spatial import ConvexHull
 from symmetric_bodies import (
     Row,
     about_z,
@@ -94,6 +100,36 @@ def _chair() -> list[Row]:
     return crown("C", 6, 1.47, 0.25) + axial + equatorial
 
 
+def _snub_cube() -> list[Row]:
+    """The 24 vertices of the right-handed snub cube, edge about 1.4 angstrom."""
+    t = 1.8392867552141612  # t^3 = t^2 + t + 1
+    rows: list[Row] = []
+    for order in permutations(range(3)):
+        is_even = np.linalg.det(np.eye(3)[list(order)]) > 0
+        for signs in product((1, -1), repeat=3):
+            if (np.prod(signs) > 0) is not is_even:
+                place = np.array([1.0, 1 / t, t])[list(order)] * np.array(signs) * 0.86
+                rows.append(("C", *map(float, place)))
+    return rows
+
+
+def _fullerene_140() -> list[Row]:
+    """The dual of the icosahedron whose faces are divided by the lattice vector (2, 1): its 140 faces."""
+    corners = np.array([row[1:] for row in icosahedron("C", 1.0)])
+    side = min(np.linalg.norm(corners[0] - corners[1:], axis=1))
+    points = list(corners)
+    for face in ConvexHull(corners).simplices:
+        a, b, c = corners[face]
+        if np.dot(np.cross(b - a, c - a), a) < 0:
+            b, c = c, b
+        assert np.isclose(np.linalg.norm(a - b), side)
+        for u, v, w in ((4, 2, 1), (1, 4, 2), (2, 1, 4)):
+            points.append((u * a + v * b + w * c) / 7)
+    unit = np.array([point / np.linalg.norm(point) for point in points])
+    faces = unit[ConvexHull(unit).simplices].mean(axis=1)
+    return [("C", *map(float, 5.9 * place / np.linalg.norm(place))) for place in faces]
+
+
 #: Name, group, source, atoms.
 NAMED: list[tuple[str, str, str, list[Row]]] = [
     ("bromochlorofluoromethane", "C1", "C", [
@@ -177,6 +213,8 @@ NAMED: list[tuple[str, str, str, list[Row]]] = [
     ("sulfur hexafluoride", "Oh", "C", at("S", (0, 0, 0)) + spread("F", "Oh", 1.56, 0, 0)),
     ("hexacarbonylchromium", "Oh", "C", _carbonyl("Cr", "Oh", (1.91, 0, 0))),
     ("cubane", "Oh", "P", _cubane()),
+    ("snub cube of carbon", "O", "S", _snub_cube()),
+    ("fullerene C140", "I", "F", _fullerene_140()),
     ("closo-dodecaborate(2-)", "Ih", "C", icosahedron("B", 1.78) + icosahedron("H", 3.05)),
     ("dodecahedrane", "Ih", "P", dodecahedron("C", 1.54) + dodecahedron("H", 2.32)),
     ("hydrogen cyanide", "C∞v", "C", at("H", (0, 0, -1.07)) + at("C", (0, 0, 0)) + at("N", (0, 0, 1.16))),
