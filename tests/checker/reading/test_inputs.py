@@ -25,12 +25,12 @@ def workplace(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Workplace:
 
     def make(files: dict[str, str]) -> Path:
         for name, text in files.items():
-            path = tmp_path / "work" / name
+            path = tmp_path / "desk" / name
             path.parent.mkdir(parents=True, exist_ok=True)
             path.write_text(text, encoding="utf-8")
-        (tmp_path / "work").mkdir(exist_ok=True)
-        monkeypatch.chdir(tmp_path / "work")
-        return tmp_path / "work"
+        (tmp_path / "desk").mkdir(exist_ok=True)
+        monkeypatch.chdir(tmp_path / "desk")
+        return tmp_path / "desk"
 
     return make
 
@@ -265,7 +265,7 @@ class TestConfinement:
     def test_error_the_folder_of_the_call_is_closed_to_a_deck_outside(self, workplace: Workplace) -> None:
         place = workplace({"g.xyz": FRAME})
         (place.parent / "alien").mkdir()
-        (place.parent / "alien/a.deck.toml").write_text(HEAD + 'geometry = "../work/g.xyz"\n')
+        (place.parent / "alien/a.deck.toml").write_text(HEAD + 'geometry = "../desk/g.xyz"\n')
         (said,) = sentences("../alien/a.deck.toml")
         assert said.endswith(OUT)
 
@@ -274,7 +274,7 @@ class TestConfinement:
         self, workplace: Workplace, monkeypatch: pytest.MonkeyPatch, wide: str
     ) -> None:
         place = workplace({"jobs/a.deck.toml": HEAD + 'geometry = "../g.xyz"\n', "g.xyz": FRAME})
-        (place.parent / "alias").symlink_to("work")
+        (place.parent / "alias").symlink_to("desk")
         monkeypatch.setenv("HOME", str(place if wide == "home" else place.parent / "alias"))
         (said,) = sentences("jobs/a.deck.toml")
         assert said.endswith(OUT)
