@@ -3,6 +3,7 @@
 # sentences stand whole where they can, so that a search finds them
 # ruff: noqa: E501
 
+import errno
 import os
 import socket
 from collections.abc import Callable
@@ -148,19 +149,22 @@ def test_error_what_cannot_be_opened(workplace: Workplace, path: str, message: s
     assert said.endswith(f": {message}")
 
 
-def test_error_no_right_to_read(workplace: Workplace) -> None:
-    place = workplace({"set/a.deck.toml": DECK, "set/inner/b.deck.toml": DECK})
-    (place / "set/a.deck.toml").chmod(0)
-    (place / "set/inner").chmod(0)
-    if os.access("set/a.deck.toml", os.R_OK):
-        pytest.skip("this user may read everything")
-    try:
-        assert sentences("set") == [
-            "set/a.deck.toml: this user has no right to read the file; ask its owner, or change its rights",
-            "set/inner: this user has no right to list the folder, so the decks in it were not read",
-        ]
-    finally:
-        (place / "set/inner").chmod(0o700)
+def test_error_no_right_to_read(workplace: Workplace, monkeypatch: pytest.MonkeyPatch) -> None:
+    """Rights are refused by the calls themselves, as the tests may run as a user who may read everything."""
+    workplace({"set/a.deck.toml": DECK, "set/inner/b.deck.toml": DECK})
+    for call in ("open", "scandir"):
+        real = getattr(os, call)
+
+        def refuse(path: str, *rest: object, real: Callable[..., object] = real) -> object:
+            if os.fspath(path) in ("set/a.deck.toml", "set/inner"):
+                raise PermissionError(errno.EACCES, "refused", path)
+            return real(path, *rest)
+
+        monkeypatch.setattr(os, call, refuse)
+    assert sentences("set") == [
+        "set/a.deck.toml: this user has no right to read the file; ask its owner, or change its rights",
+        "set/inner: this user has no right to list the folder, so the decks in it were not read",
+    ]
 
 
 class TestGeometryFile:
