@@ -11,6 +11,7 @@ import pytest
 
 from builders import TODAY
 from checker.api import check_path
+from checker.cli import run
 from checker.findings import DeckReport
 
 FOLDER = Path(__file__).parent.parent / "sample_decks"
@@ -49,3 +50,16 @@ def test_gives_what_it_declares_and_nothing_else(path: Path) -> None:
 def test_judges_all_that_applies(path: Path) -> None:
     """A crash of a rule would show here even in a deck that declares nothing."""
     assert not any(report.rule_failed for report in check_path(path, today=TODAY))
+
+
+def test_the_readme_shows_what_is_printed(
+    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    """The screen in README.md, between the command and the end of its block, is what the command prints."""
+    readme = (FOLDER.parent / "README.md").read_text()
+    shown = re.search(r"\$ hundsight (check (\S+))\n(.*?)\n```", readme, re.DOTALL)
+    assert shown is not None
+    monkeypatch.chdir(FOLDER.parent)
+    monkeypatch.setenv("COLUMNS", "80")
+    run(shown[1].split())
+    assert capsys.readouterr().out.rstrip() == shown[3]

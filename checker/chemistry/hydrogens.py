@@ -117,7 +117,7 @@ def _lost(valence: Valence, atom: int, fit: float, tally: Tally) -> HydrogenEdit
     if degree == 3 and fit < LEAST_ROOM:
         shape = "has three neighbours"
     x, y, z = (round(float(value), 4) for value in place)
-    reason = f"{shape}: a hydrogen would sit at {x:.2f} {y:.2f} {z:.2f} angstrom"
+    reason = f"{shape}, with room for a hydrogen"
     return HydrogenEdit(atom=atom, fit=fit, tally_after=tally, reason=reason, position=(x, y, z))
 
 
