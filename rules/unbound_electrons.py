@@ -25,7 +25,7 @@ from checker.registry import Rule
 
 def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
     """Speak where an anion in the gas phase does not hold all its electrons."""
-    if facts.charge >= 0 or facts.environment != "gas":
+    if facts.charge >= 0 or facts.environment != "gas" or not len(facts.real_numbers):
         return
     if facts.free_atom is not None:
         yield from _atom(facts, facts.free_atom)

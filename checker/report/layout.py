@@ -25,6 +25,10 @@ _VERDICT_GLYPHS = {
     Verdict.CLEAR: "note",
     Verdict.UNREADABLE: "unreadable",
 }
+# Groups and irreps as they are written, and read, where only ASCII is to be had.
+_SPELLED_OUT = str.maketrans(
+    {"∞": "inf", "Σ": "Sigma", "Π": "Pi", "Δ": "Delta", "Φ": "Phi", "Γ": "Gamma", "Η": "Eta", "Ι": "Iota"}
+)
 # Weight is shown by weight of type; the one colour marks what is there to be pasted.
 _STYLES = {"halt": "bold reverse", "doubt": "bold", "name": "bold", "label": "dim", "paste": "cyan"}
 
@@ -85,6 +89,8 @@ class Page:
 
     def free(self, *segments: Segment) -> str:
         """Return one line of segments outside the columns."""
+        if not self._look.symbols:
+            segments = tuple((text.translate(_SPELLED_OUT), style) for text, style in segments)
         if self._paint is None:
             return "".join(text for text, _ in segments).rstrip() + "\n"
         return "".join(self._paint(text, style) for text, style in segments).rstrip() + "\n"

@@ -63,3 +63,8 @@ def test_a_dianion_is_not_offered_another_charge() -> None:
 def test_an_atom_without_a_measurement_is_not_judged() -> None:
     (word,) = speak(RULE, job("Og", charge=-1))
     assert isinstance(word, NotJudged)
+
+
+def test_a_deck_of_ghosts_alone_is_left_to_the_electron_count() -> None:
+    """Found by the fuzz test."""
+    assert run_rule(RULE, job("H", -1, 1, {"ghost_atoms": [1]})) == []

@@ -117,3 +117,11 @@ def test_a_title_and_a_message_without_end_are_cut_short() -> None:
 
     assert sum(map(len, shown)) < 2000
     assert sum("--format json has it all" in line for line in shown) == 2
+
+
+def test_where_only_ascii_is_to_be_had_greek_is_spelled_out() -> None:
+    nitrogen = job([("N", 0.0, 0.0, 0.55), ("N", 0.0, 0.0, -0.55)], 0, 1)
+    shown = lines(report(nitrogen), symbols=False)
+
+    assert any(line.startswith("symmetry      Dinfh") for line in shown)
+    assert all(line.isascii() for line in shown)
