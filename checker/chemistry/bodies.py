@@ -77,6 +77,11 @@ class Body:
         columns = [np.sort(self.distances[:, self.kinds == kind], axis=1) for kind in range(self.kinds.max() + 1)]
         return np.concatenate(columns, axis=1)
 
+    @cached_property
+    def environment_gaps(self) -> Floats:
+        """(n, n) the largest difference between two atoms' environments, angstrom; n^3 numbers on the way."""
+        return np.asarray(np.abs(self.environments[:, None, :] - self.environments[None, :, :]).max(axis=2))
+
     def images(self, matrices: Floats, atoms: Ints | None = None) -> Ints:
         """Return the atom of the same kind nearest to where each operation takes each atom.
 
@@ -173,5 +178,6 @@ def body_of(kinds: Ints, coordinates: Floats) -> tuple[Body, Floats]:
     """Return the body and its centre (3,) in the coordinates' axes, angstrom."""
     points = np.ascontiguousarray(coordinates, dtype=np.float64).reshape(-1, 3)
     centre = points.mean(axis=0)
-    _, numbered = np.unique(np.asarray(kinds), return_inverse=True)
-    return Body(numbered.reshape(-1).astype(np.int64), points - centre), centre
+    number_of = {kind: number for number, kind in enumerate(sorted(set(np.asarray(kinds).tolist())))}
+    numbered = np.array([number_of[kind] for kind in np.asarray(kinds).tolist()], dtype=np.int64)
+    return Body(numbered, points - centre), centre

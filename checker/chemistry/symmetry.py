@@ -15,8 +15,9 @@ import numpy as np
 from checker.chemistry import levels
 from checker.chemistry.axes import placements
 from checker.chemistry.bodies import Body, Floats, Ints, body_of
+from checker.chemistry.closure import trivial
 from checker.chemistry.descent import abelian_subgroups, operations_of
-from checker.chemistry.fitting import Fit
+from checker.chemistry.fitting import Fit, fitted
 from checker.chemistry.frames import (
     LABELS_WITHOUT_AXES,
     Placement,
@@ -28,6 +29,7 @@ from checker.chemistry.frames import (
 from checker.chemistry.irreps import MAX_AXIS, common_groups, point_group
 from checker.chemistry.lines import CONTINUOUS, Line, line_through, place_on_line
 from checker.chemistry.point_groups import standard_operations
+from checker.chemistry.symmetry_search import is_asymmetric
 from checker.errors import NotDerivable
 
 DEFAULT_TOLERANCE = 0.01
@@ -266,6 +268,8 @@ def _fit(body: Body, tolerance: float) -> Fit | Line | None:
     if body.radii.max() <= tolerance:
         return None
     _refuse_coincidence(body, tolerance)
+    if is_asymmetric(body, tolerance):
+        return fitted(body, trivial(len(body)))
     return line_through(body, tolerance) or levels.largest_group(body, tolerance)
 
 

@@ -72,7 +72,7 @@ def approximate_operations(body: Body, reach: float) -> Found:
         If the body has more operations than any group that has a name here.
 
     """
-    if _is_asymmetric(body, reach):
+    if is_asymmetric(body, reach):
         return _identity(len(body))
     pool, resembles = _pool(body, reach)
     reference = _reference_pair(body, pool, resembles, reach)
@@ -88,15 +88,14 @@ def approximate_operations(body: Body, reach: float) -> Found:
     return _sifted(body, matrices, handedness, allowed, WORST_IN_REACH * reach)
 
 
-def _is_asymmetric(body: Body, reach: float) -> bool:
+def is_asymmetric(body: Body, reach: float) -> bool:
     """Tell whether no two atoms can be equivalent and the body is not flat: no operation but the identity is left.
 
     Tried on small bodies only, as it compares all distances of all pairs. Where it is not told, the search tells.
     """
     if len(body) > MOST_COMPARED_ATOMS:
         return False
-    gaps = np.abs(body.environments[:, None, :] - body.environments[None, :, :]).max(axis=2)
-    n_resembling = np.count_nonzero(body.alike & (gaps <= 4.0 * reach + 1e-9))
+    n_resembling = np.count_nonzero(body.alike & (body.environment_gaps <= 4.0 * reach + 1e-9))
     if n_resembling > len(body):
         return False
     thickness = float(np.linalg.eigvalsh(body.positions.T @ body.positions)[0])
