@@ -296,13 +296,13 @@ class TestOutput:
         self, folder: Path, monkeypatch: pytest.MonkeyPatch
     ) -> None:
         """ASCII boxes, and escapes for the rest."""
-        (folder / "clear.deck.toml").write_text(f'title = "\u03a3"\n{WATER}', encoding="utf-8")
+        (folder / "clear.deck.toml").write_text(f'title = "\u00fc"\n{WATER}', encoding="utf-8")
         raw = io.BytesIO()
         monkeypatch.setattr(sys, "stdout", io.TextIOWrapper(raw, encoding="ascii"))
 
         assert run(["check", "clear.deck.toml"]) == 0
 
-        assert raw.getvalue().startswith(b"- CLEAR       clear.deck.toml\n              \\u03a3\n")
+        assert raw.getvalue().startswith(b"- CLEAR       clear.deck.toml\n              \\xfc\n")
 
     def test_a_terminal_gets_colour_unless_no_color_is_set(self, monkeypatch: pytest.MonkeyPatch) -> None:
         """And the words are the same without it."""
