@@ -216,10 +216,10 @@ class Facts:
     @cached_property
     def ground_level(self) -> "GroundLevel":
         """The ground level of a free atom or ion; not derivable for molecules or where none is known."""
-        from checker.chemistry.configurations import ground_level
-
         if self.free_atom is None:
             raise NotDerivable("the species is no free atom")
+        from checker.chemistry.configurations import ground_level  # tables that molecules do not need
+
         return ground_level(self.free_atom, self.charge)
 
     @cached_property
@@ -324,7 +324,9 @@ class Facts:
     def symmetry_book(self) -> SymmetryBook | None:
         """The symmetry for the report, None where it is not settled."""
         try:
-            symmetry, labels = self.symmetry, self.irreps.placement_of_report
+            symmetry = self.symmetry
+            stated = self.job.symmetry.point_group is not None
+            labels = self.irreps.placement_of_report if stated else symmetry.abelian
         except NotDerivable:
             return None
         return SymmetryBook(

@@ -14,11 +14,14 @@ Theory, 3rd ed., ch. 9 (from memory).
 """
 
 from collections.abc import Iterator
+from typing import TYPE_CHECKING
 
-from checker.chemistry.filling import OpenLevel
 from checker.facts import Facts
 from checker.findings import Finding, Grade, Json, NotJudged
 from checker.registry import Rule
+
+if TYPE_CHECKING:
+    from checker.chemistry.filling import OpenLevel
 
 
 def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
@@ -46,7 +49,7 @@ def _key(facts: Facts) -> str:
     return next((f"occupations.{name}" for name, table in named.items() if table is not None), "occupations")
 
 
-def _evidence(facts: Facts, level: OpenLevel) -> dict[str, Json]:
+def _evidence(facts: Facts, level: "OpenLevel") -> dict[str, Json]:
     return {
         "point_group": facts.irreps.group,
         "full_group": facts.irreps.body_group,
@@ -58,7 +61,7 @@ def _evidence(facts: Facts, level: OpenLevel) -> dict[str, Json]:
     }
 
 
-def _holds(facts: Facts, level: OpenLevel) -> str:
+def _holds(facts: Facts, level: "OpenLevel") -> str:
     plural = "electron" if level.n_electrons == 1 else "electrons"
     partners = "" if facts.irreps.group == facts.irreps.body_group else f", here {_partners(facts, level)},"
     article = "an" if level.irrep[0] in "AEFHIS" else "a"
@@ -67,12 +70,12 @@ def _holds(facts: Facts, level: OpenLevel) -> str:
     )
 
 
-def _partners(facts: Facts, level: OpenLevel) -> str:
+def _partners(facts: Facts, level: "OpenLevel") -> str:
     counted = facts.irreps.electrons_per_level[level.irrep]
     return " + ".join(name if n == 1 else f"{n} {name}" for name, n in counted.items())
 
 
-def _one_term(facts: Facts, level: OpenLevel) -> Finding:
+def _one_term(facts: Facts, level: "OpenLevel") -> Finding:
     (term,) = facts.irreps.terms_of(level)
     state = f"a {term}" if _only_open(facts, level) else "a degenerate"
     return Finding(
@@ -85,7 +88,7 @@ def _one_term(facts: Facts, level: OpenLevel) -> Finding:
     )
 
 
-def _mixed_terms(facts: Facts, level: OpenLevel) -> Finding:
+def _mixed_terms(facts: Facts, level: "OpenLevel") -> Finding:
     terms = " and ".join(facts.irreps.terms_of(level)) if _only_open(facts, level) else "several terms"
     return Finding(
         at=_key(facts),
@@ -97,7 +100,7 @@ def _mixed_terms(facts: Facts, level: OpenLevel) -> Finding:
     )
 
 
-def _only_open(facts: Facts, level: OpenLevel) -> bool:
+def _only_open(facts: Facts, level: "OpenLevel") -> bool:
     """Tell whether all else is doubly filled, so that the terms of the level are those of the state."""
     alpha, beta = facts.irreps.electrons
     names = {*alpha, *beta}

@@ -12,7 +12,6 @@ Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., appendix I
 
 from collections.abc import Iterator, Mapping
 
-from checker.chemistry.filling import missing_partners
 from checker.chemistry.irrep_names import read_state
 from checker.errors import NotDerivable
 from checker.facts import Facts
@@ -28,6 +27,8 @@ def judge(facts: Facts) -> Iterator[Finding]:
     if not written:
         return
     roots = _read(facts, written)
+    from checker.chemistry.filling import missing_partners
+
     additions = missing_partners(facts.irreps.states_per_level, roots)
     if additions:
         yield _incomplete(facts, written, roots, additions)

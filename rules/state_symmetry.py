@@ -13,9 +13,7 @@ Source: F. A. Cotton, Chemical Applications of Group Theory, 3rd ed., secs. 5.2 
 
 from collections.abc import Iterator
 
-from checker.chemistry.filling import state_irreps
 from checker.chemistry.irrep_names import read_state
-from checker.chemistry.methods import kind_of
 from checker.errors import NotDerivable
 from checker.facts import Facts
 from checker.findings import Edit, Finding, Grade, Json, NotJudged, Repair
@@ -29,6 +27,9 @@ def judge(facts: Facts) -> Iterator[Finding | NotJudged]:
     treatment = facts.job.treatment
     if treatment.state_irrep is None or not _one_determinant(facts):
         return
+    from checker.chemistry.filling import state_irreps  # only decks that ask for a state need these
+    from checker.chemistry.methods import kind_of
+
     if treatment.method is not None and kind_of(treatment.method) is None:
         yield NotJudged(f"whether {treatment.method!r} is a method of one determinant is not known")
         return
@@ -46,6 +47,8 @@ def _one_determinant(facts: Facts) -> bool:
     treatment = facts.job.treatment
     if treatment.spin_treatment not in ("restricted", "restricted-open") or facts.job.active_space is not None:
         return False
+    from checker.chemistry.methods import kind_of
+
     known = None if treatment.method is None else kind_of(treatment.method)
     return facts.intent != "excited" and known not in ("multiconfigurational", "excited states")
 
