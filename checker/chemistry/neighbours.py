@@ -1,4 +1,4 @@
-"""Which atoms lie near which: pairs within a cutoff and nearest distances.
+"""Which atoms lie near which: pairs within a cutoff.
 
 Small systems are done with dense arrays; large ones with a k-d tree, whose library is imported only then.
 """
@@ -53,24 +53,6 @@ def neighbour_pairs(coordinates: Floats, cutoff: float) -> tuple[Ints, Floats]:
     return _tree_pairs(points, cutoff)
 
 
-def nearest_distances(coordinates: Floats) -> Floats:
-    """Distance of each atom to its nearest neighbour, (n,) angstrom; infinite where there is only one atom."""
-    points = np.ascontiguousarray(coordinates, dtype=np.float64).reshape(-1, 3)
-    if len(points) < 2:
-        return np.full(len(points), np.inf)
-    if len(points) < DENSE_LIMIT_ATOMS:
-        return _dense_nearest(points)
-    from scipy.spatial import cKDTree  # heavy, and needed for large systems only
-
-    # Coincident atoms are set aside first: a leaf that cannot be split makes the search quadratic.
-    distinct, which, copies = np.unique(points, axis=0, return_inverse=True, return_counts=True)
-    if len(distinct) == 1:
-        return np.zeros(len(points))
-    distances, _ = cKDTree(distinct, balanced_tree=False, compact_nodes=False).query(distinct, k=2)
-    nearest = np.where(copies > 1, 0.0, distances[:, 1])
-    return np.asarray(nearest[which.reshape(-1)], dtype=np.float64)
-
-
 def _rows_per_block(n_atoms: int) -> int:
     return max(1, _BLOCK_ELEMENTS // max(1, n_atoms))
 
@@ -106,18 +88,6 @@ def _dense_pairs(points: Floats, cutoff: float) -> tuple[Ints, Floats]:
     if not found:
         return np.empty((0, 2), dtype=np.int64), np.empty(0)
     return np.concatenate(found), np.concatenate(lengths)
-
-
-def _dense_nearest(points: Floats) -> Floats:
-    nearest = np.empty(len(points))
-    step = _rows_per_block(len(points))
-    for start in range(0, len(points), step):
-        stop = min(start + step, len(points))
-        gaps = points[start:stop, None, :] - points[None, :, :]
-        squares = np.einsum("ijk,ijk->ij", gaps, gaps)
-        squares[np.arange(stop - start), np.arange(start, stop)] = np.inf
-        nearest[start:stop] = np.sqrt(squares.min(axis=1))
-    return nearest
 
 
 def _tree_pairs(points: Floats, cutoff: float) -> tuple[Ints, Floats]:

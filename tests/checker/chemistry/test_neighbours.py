@@ -5,7 +5,7 @@ import pytest
 from scipy.spatial.distance import pdist, squareform
 
 from checker.chemistry import neighbours
-from checker.chemistry.neighbours import nearest_distances, neighbour_pairs
+from checker.chemistry.neighbours import neighbour_pairs
 from checker.errors import NotDerivable
 
 CUTOFF = 3.0
@@ -25,23 +25,10 @@ def test_pairs_are_those_of_the_distance_matrix(n_atoms: int) -> None:
     assert np.allclose(distances, [full[pair] for pair in expected])
 
 
-@pytest.mark.parametrize("n_atoms", [2, 57, 700, 2100], ids=lambda n: f"n{n}")
-def test_nearest_distances_are_those_of_the_distance_matrix(n_atoms: int) -> None:
-    points = cloud(n_atoms, 20.0)
-    full = squareform(pdist(points))
-    np.fill_diagonal(full, np.inf)
-    assert np.allclose(nearest_distances(points), full.min(axis=1))
-
-
-def test_a_lone_atom_has_no_nearest() -> None:
-    assert nearest_distances(np.zeros((1, 3))).tolist() == [np.inf]
-
-
 @pytest.mark.parametrize("n_atoms", [5, 300, 3000])
 def test_coincident_atoms_lie_at_zero(n_atoms: int) -> None:
     points = np.vstack([cloud(n_atoms - 1, 50.0), np.zeros((1, 3))])
     points[0] = 0.0
-    assert nearest_distances(points)[[0, -1]].tolist() == [0.0, 0.0]
     pairs, distances = neighbour_pairs(points, 0.0)
     assert (pairs.tolist(), distances.tolist()) == ([[0, n_atoms - 1]], [0.0])
 
